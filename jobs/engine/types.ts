@@ -1,0 +1,114 @@
+/**
+ * What goes into the engine and what comes out. Everything here is plain data, so that it can be
+ * posted to a thread as it is.
+ */
+
+/** A simple undirected graph whose nodes arrive one by one. */
+export interface Network {
+  /** Number of nodes n; nodes are the rows 0..n-1. */
+  readonly nodeCount: number;
+  /** Two node rows per edge, no self loops, every undirected edge once. Length 2 m. */
+  readonly edges: Uint32Array;
+  /** f(v), the filtration value of every node row: finite, in the unit of the scale. Length n. */
+  readonly values: Float64Array;
+}
+
+/** The bars of one dimension, sorted by (birth, death). `deaths[k]` is Infinity for a bar that never dies. */
+export interface Bars {
+  readonly births: Float64Array;
+  readonly deaths: Float64Array;
+}
+
+/** Bars by dimension: `barcode[k]` for k = 0..maxDimension. */
+export type Barcode = readonly Bars[];
+
+/** What the engine may use. A run that needs more fails with an EngineLimitError that says the number. */
+export interface Limits {
+  /** Most simplices (cliques of 1..D+2 nodes) that may be listed. */
+  readonly simplices: number;
+  /** Most bytes of typed arrays that may be held. */
+  readonly bytes: number;
+}
+
+/** Checked at least every 50 ms while the engine computes. */
+export interface Control {
+  shouldStop(): boolean;
+  /** Pairs finished since the computation of these rows began. */
+  onProgress(pairsDone: number): void;
+}
+
+/**
+ * Results of all pairs (p, q), q > p, of some rows p, in the order of the rows given and, within a
+ * row, q ascending. Positions are arrival positions 0..n-1 (sorted by value, ties by node row).
+ */
+export interface RowResults {
+  /** Arrival positions p, as asked for. */
+  readonly rows: Uint32Array;
+  /** Number of pairs P = sum over rows of (n - 1 - p). */
+  readonly pairCount: number;
+  /** Exact bottleneck distances in the unit of f: dimension k of pair i at [k * P + i]. Length (D + 1) P. */
+  readonly distances: Float64Array;
+  /** Largest absolute differences of the Betti curves (bars): the same layout. */
+  readonly bettiGaps: Int32Array;
+}
+
+/** One bar of each side, or one side only where the bar goes to the diagonal (index -1). */
+export interface BarMatch {
+  /** Index into `recorded[k]`, or -1. */
+  readonly recorded: number;
+  /** Index into `swapped[k]`, or -1. */
+  readonly swapped: number;
+  /** What this match costs, in the unit of f. */
+  readonly cost: number;
+}
+
+/** Everything about one swap, for the reader who clicked on it. */
+export interface PairDetail {
+  /** Arrival positions, p < q. */
+  readonly p: number;
+  readonly q: number;
+  readonly bound: number;
+  readonly distances: readonly number[];
+  readonly bettiGaps: readonly number[];
+  readonly recorded: Barcode;
+  readonly swapped: Barcode;
+  /** Per dimension an optimal bottleneck matching of the two barcodes; equal bars are matched with themselves wherever that is optimal. */
+  readonly matchings: readonly (readonly BarMatch[])[];
+  /** Per dimension the index in `matchings[k]` of a match whose cost is the distance, or -1 if the distance is 0. */
+  readonly realising: readonly number[];
+}
+
+/** What a whole matrix would need, counted before it is run. */
+export interface Estimate {
+  /** Number of cliques with 1, 2, .. D + 2 nodes; counting stops at the cap. */
+  readonly cliques: readonly number[];
+  /** False if the cap was reached: the counts are then lower bounds. */
+  readonly exact: boolean;
+  readonly pairs: number;
+  /** Peak bytes of typed arrays of one thread. */
+  readonly bytes: number;
+  /** Seconds of one thread on an ordinary machine; a rule of thumb. */
+  readonly seconds: number;
+}
+
+export class EngineInputError extends Error {
+  override readonly name = 'EngineInputError';
+}
+
+/** A limit was passed. The message is a plain sentence with the number that broke it. */
+export class EngineLimitError extends Error {
+  override readonly name = 'EngineLimitError';
+  constructor(
+    readonly limit: keyof Limits,
+    readonly needed: number,
+    readonly allowed: number,
+    message: string,
+  ) {
+    super(message);
+  }
+}
+
+/** `shouldStop` answered true. */
+export class EngineStopped extends Error {
+  override readonly name = 'EngineStopped';
+}
