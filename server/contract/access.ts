@@ -1,0 +1,153 @@
+import type { Role } from './enums';
+
+/**
+ * Role × route: the only place that says who may do what. The router refuses to start with a route
+ * that is not listed here, and the tests walk every row. `public` needs no session, `account` any
+ * session; otherwise the roles of the workspace in the path. Someone without a membership gets 404,
+ * a member whose role is not listed 403.
+ */
+export type Access = 'public' | 'account' | readonly Role[];
+
+export interface RouteRule {
+  readonly method: 'get' | 'post' | 'patch' | 'delete';
+  readonly path: string;
+  readonly access: Access;
+  readonly summary: string;
+}
+
+const EVERYONE = ['owner', 'analyst', 'recorder', 'reviewer'] as const;
+const EDITORS = ['owner', 'analyst'] as const;
+const OWNERS = ['owner'] as const;
+
+const W = '/api/workspaces/:workspaceId';
+
+export const ROUTES = {
+  health: { method: 'get', path: '/health', access: 'public', summary: 'The process lives' },
+  ready: { method: 'get', path: '/ready', access: 'public', summary: 'A job was consumed lately' },
+  instance: {
+    method: 'get',
+    path: '/api/instance',
+    access: 'public',
+    summary: 'What a visitor may know',
+  },
+  signUp: { method: 'post', path: '/api/accounts', access: 'public', summary: 'Make an account' },
+  signIn: { method: 'post', path: '/api/session', access: 'public', summary: 'Sign in' },
+  me: { method: 'get', path: '/api/session', access: 'account', summary: 'Who I am' },
+  signOut: { method: 'delete', path: '/api/session', access: 'account', summary: 'Sign out' },
+  createWorkspace: {
+    method: 'post',
+    path: '/api/workspaces',
+    access: 'account',
+    summary: 'Make a workspace and own it',
+  },
+  workspace: { method: 'get', path: W, access: EVERYONE, summary: 'The workspace' },
+  members: { method: 'get', path: `${W}/members`, access: EVERYONE, summary: 'Its members' },
+  addMember: { method: 'post', path: `${W}/members`, access: OWNERS, summary: 'Add a member' },
+  changeMember: {
+    method: 'patch',
+    path: `${W}/members/:userId`,
+    access: OWNERS,
+    summary: 'Change a role',
+  },
+  removeMember: {
+    method: 'delete',
+    path: `${W}/members/:userId`,
+    access: OWNERS,
+    summary: 'Remove a member',
+  },
+  datasets: { method: 'get', path: `${W}/datasets`, access: EVERYONE, summary: 'Its datasets' },
+  createDataset: {
+    method: 'post',
+    path: `${W}/datasets`,
+    access: EDITORS,
+    summary: 'Bring a network in',
+  },
+  dataset: {
+    method: 'get',
+    path: `${W}/datasets/:datasetId`,
+    access: EVERYONE,
+    summary: 'One dataset',
+  },
+  createRevision: {
+    method: 'post',
+    path: `${W}/datasets/:datasetId/revisions`,
+    access: EDITORS,
+    summary: 'Bring a new revision in',
+  },
+  revision: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId`,
+    access: EVERYONE,
+    summary: 'Nodes and edges of a revision',
+  },
+  createRun: { method: 'post', path: `${W}/runs`, access: EDITORS, summary: 'Start a run' },
+  run: { method: 'get', path: `${W}/runs/:runId`, access: EVERYONE, summary: 'One run' },
+  stopRun: {
+    method: 'post',
+    path: `${W}/runs/:runId/stop`,
+    access: EDITORS,
+    summary: 'Stop a run',
+  },
+  runEvents: {
+    method: 'get',
+    path: `${W}/runs/:runId/events`,
+    access: EVERYONE,
+    summary: 'Progress as server-sent events',
+  },
+  runBlock: {
+    method: 'get',
+    path: `${W}/runs/:runId/blocks/:block`,
+    access: EVERYONE,
+    summary: 'One block of the matrix',
+  },
+  runBarcode: {
+    method: 'get',
+    path: `${W}/runs/:runId/barcode`,
+    access: EVERYONE,
+    summary: 'Barcode of the recorded order',
+  },
+  runPair: {
+    method: 'get',
+    path: `${W}/runs/:runId/pairs/:a/:b`,
+    access: EVERYONE,
+    summary: 'One swap in full',
+  },
+  runPairsCsv: {
+    method: 'get',
+    path: `${W}/runs/:runId/pairs.csv`,
+    access: EVERYONE,
+    summary: 'The matrix as CSV',
+  },
+  runBarcodesCsv: {
+    method: 'get',
+    path: `${W}/runs/:runId/barcodes.csv`,
+    access: EVERYONE,
+    summary: 'The recorded barcode as CSV',
+  },
+  groups: {
+    method: 'get',
+    path: `${W}/runs/:runId/groups`,
+    access: EVERYONE,
+    summary: 'Groups of a run',
+  },
+  createGroup: {
+    method: 'post',
+    path: `${W}/runs/:runId/groups`,
+    access: EDITORS,
+    summary: 'Save a group',
+  },
+  deleteGroup: {
+    method: 'delete',
+    path: `${W}/groups/:groupId`,
+    access: EDITORS,
+    summary: 'Delete a group',
+  },
+} as const satisfies Record<string, RouteRule>;
+
+export type RouteName = keyof typeof ROUTES;
+
+/** @returns whether a member with this role may use the route. */
+export function mayUse(role: Role, route: RouteName): boolean {
+  const { access }: RouteRule = ROUTES[route];
+  return access === 'public' || access === 'account' || access.includes(role);
+}

@@ -1,0 +1,79 @@
+import { z } from 'zod';
+import { MAX_DIMENSION, runStateSchema, scaleSchema } from './enums';
+
+export const dimensionsSchema = z
+  .array(z.number().int().min(0).max(MAX_DIMENSION))
+  .min(1, 'Choose at least one dimension.')
+  .refine((list) => new Set(list).size === list.length, 'Each dimension once.')
+  .transform((list) => [...list].sort((a, b) => a - b));
+
+/** POST …/runs; the Idempotency-Key header (any text up to 200 characters) makes a repeat answer the same run. */
+export const createRunRequest = z.strictObject({
+  revisionId: z.uuid(),
+  scale: scaleSchema.default('entry'),
+  dimensions: dimensionsSchema.default([1, 2, 3]),
+});
+export type CreateRunRequest = z.input<typeof createRunRequest>;
+
+export const run = z.strictObject({
+  id: z.uuid(),
+  workspaceId: z.uuid(),
+  datasetId: z.uuid(),
+  datasetName: z.string(),
+  invented: z.boolean(),
+  revisionId: z.uuid(),
+  revisionNumber: z.number().int(),
+  contentHash: z.string(),
+  number: z.number().int().positive(),
+  scale: scaleSchema,
+  dimensions: z.array(z.number().int()),
+  engineVersion: z.string(),
+  state: runStateSchema,
+  nodeCount: z.number().int(),
+  pairsDone: z.number().int(),
+  pairsTotal: z.number().int(),
+  /** Blocks of pairs; 0 until the run is planned. */
+  blockCount: z.number().int(),
+  /** Block numbers already stored, in the order they landed. */
+  blocksDone: z.array(z.number().int()),
+  requestedBy: z.string().nullable(),
+  createdAt: z.iso.datetime(),
+  startedAt: z.iso.datetime().nullable(),
+  finishedAt: z.iso.datetime().nullable(),
+  /** A plain sentence with the number that broke a limit; null unless failed. */
+  failure: z.strictObject({ code: z.string(), message: z.string() }).nullable(),
+});
+export type Run = z.infer<typeof run>;
+export const runList = z.strictObject({ runs: z.array(run) });
+
+/** Bars of one dimension as [birth, death]; death null for a bar that never dies. In the unit of the scale. */
+export const barsSchema = z.array(z.tuple([z.number(), z.number().nullable()]));
+export type WireBars = z.infer<typeof barsSchema>;
+
+/** GET …/runs/:run/barcode: recorded order; index = dimension 0..max(dimensions). */
+export const recordedBarcode = z.strictObject({ bars: z.array(barsSchema) });
+export type RecordedBarcode = z.infer<typeof recordedBarcode>;
+
+/** GET …/runs/:run/pairs/:a/:b with node rows a and b. */
+export const pairDetail = z.strictObject({
+  /** Node rows. `a` arrives first. */
+  a: z.number().int(),
+  b: z.number().int(),
+  bound: z.number(),
+  similarity: z.number(),
+  /** One entry per dimension 0..max(dimensions). */
+  dimensions: z.array(
+    z.strictObject({
+      dimension: z.number().int(),
+      distance: z.number(),
+      bettiGap: z.number().int(),
+      recorded: barsSchema,
+      swapped: barsSchema,
+      /** An optimal bottleneck matching: [index in recorded or -1, index in swapped or -1, cost]. */
+      matching: z.array(z.tuple([z.number().int(), z.number().int(), z.number()])),
+      /** Index in `matching` of a match that costs the distance, or -1. */
+      realising: z.number().int(),
+    }),
+  ),
+});
+export type PairDetail = z.infer<typeof pairDetail>;
