@@ -1,6 +1,5 @@
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
-import { pathToFileURL } from 'node:url';
 import { drizzle } from 'drizzle-orm/node-postgres';
 import { migrate } from 'drizzle-orm/node-postgres/migrator';
 import pg from 'pg';
@@ -48,8 +47,8 @@ const reason = (error: unknown): string => {
   return error instanceof Error ? error.message : String(error);
 };
 
-const entry = process.argv[1];
-if (entry !== undefined && import.meta.url === pathToFileURL(entry).href) {
+// In a bundle this module shares its address with others: the name of the command decides.
+if (/[\\/]migrate\.(ts|js)$/.test(process.argv[1] ?? '')) {
   try {
     await migrateDatabase(databaseUrlFromEnvironment());
     process.stdout.write('The database has the newest schema.\n');
