@@ -12,3 +12,4 @@ export * from './pairDetails';
 export * from './groups';
 export * from './outbox';
 export * from './mails';
+export * from './beats';

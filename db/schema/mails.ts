@@ -1,4 +1,4 @@
-import { pgTable, text, uuid } from 'drizzle-orm/pg-core';
+import { integer, pgTable, text, uuid } from 'drizzle-orm/pg-core';
 import { moment } from './columns';
 
 /** Messages to people. `sentAt` stays null where no SMTP server is configured; `note` then says so. */
@@ -9,6 +9,9 @@ export const mails = pgTable('mails', {
   subject: text('subject').notNull(),
   body: text('body').notNull(),
   createdAt: moment('created_at').notNull().defaultNow(),
+  tries: integer('tries').notNull().default(0),
+  /** When the message last went to the outbox. */
+  dispatchedAt: moment('dispatched_at').notNull().defaultNow(),
   sentAt: moment('sent_at'),
   note: text('note'),
 });

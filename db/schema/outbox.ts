@@ -11,7 +11,8 @@ export const outbox = pgTable(
   {
     id: bigserial('id', { mode: 'number' }).primaryKey(),
     kind: outboxKindEnum('kind').notNull(),
-    workspaceId: uuid('workspace_id').notNull(),
+    /** Null for a `beat`. */
+    workspaceId: uuid('workspace_id'),
     payload: jsonb('payload').notNull(),
     /** Names the job in the queue, so that relaying twice adds it once. */
     dispatchId: uuid('dispatch_id').notNull().defaultRandom(),

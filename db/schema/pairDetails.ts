@@ -14,6 +14,10 @@ export const pairDetails = pgTable(
     /** Engine: PairDetail with typed arrays as lists and Infinity as null. */
     detail: jsonb('detail'),
     failure: text('failure'),
+    /** How often a worker has begun to answer; past a limit the answer is a failure. */
+    tries: integer('tries').notNull().default(0),
+    /** When the question last went to the outbox or reached the queue. */
+    dispatchedAt: moment('dispatched_at').notNull().defaultNow(),
     askedAt: moment('asked_at').notNull().defaultNow(),
   },
   (table) => [

@@ -25,10 +25,15 @@ export const runs = pgTable(
     scale: scaleEnum('scale').notNull(),
     /** Chosen dimensions, ascending; all dimensions up to the largest are computed. */
     dimensions: integer('dimensions').array().notNull(),
-    engineVersion: text('engine_version').notNull(),
+    /** Written by the plan; empty before. */
+    engineVersion: text('engine_version').notNull().default(''),
     state: runStateEnum('state').notNull().default('queued'),
     /** Raised by every dispatch; each write of a worker is fenced by it. */
     attempt: integer('attempt').notNull().default(0),
+    /** Names the jobs of the latest dispatch; a new one with every attempt. */
+    dispatchId: uuid('dispatch_id').notNull().defaultRandom(),
+    /** When that dispatch was asked for or, later, reached the queue. */
+    dispatchedAt: moment('dispatched_at').notNull().defaultNow(),
     /** Pairs of the whole matrix, n (n - 1) / 2. */
     pairsTotal: integer('pairs_total').notNull(),
     /** Null until the run is planned; then the number of rows in run_blocks. */

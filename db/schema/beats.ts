@@ -1,0 +1,8 @@
+import { pgTable, text } from 'drizzle-orm/pg-core';
+import { moment } from './columns';
+
+/** When something last showed that it works: `queue` is moved forward by consuming a `beat` job. */
+export const beats = pgTable('beats', {
+  name: text('name').primaryKey(),
+  consumedAt: moment('consumed_at').notNull().defaultNow(),
+});
