@@ -1,0 +1,31 @@
+import { randomUUID } from 'node:crypto';
+import type { RequestHandler } from 'express';
+import { pino, type Logger } from 'pino';
+import { pinoHttp } from 'pino-http';
+
+export function makeLogger(level: string): Logger {
+  return pino({ level, base: null, timestamp: pino.stdTimeFunctions.isoTime });
+}
+
+/** Gives each request an id of its own, tells it to the client and logs one line when it ends. */
+export function requestLog(logger: Logger): RequestHandler {
+  return pinoHttp({
+    logger,
+    genReqId: (_request, response) => {
+      const id = randomUUID();
+      response.setHeader('X-Request-Id', id);
+      return id;
+    },
+    customLogLevel: (_request, response, error) =>
+      response.statusCode >= 500 || error ? 'error' : 'debug',
+    serializers: {
+      // Cookies, passwords and addresses of people stay out of the log.
+      req: (request: { id: unknown; method: unknown; url: unknown }) => ({
+        id: request.id,
+        method: request.method,
+        url: request.url,
+      }),
+      res: (response: { statusCode: unknown }) => ({ statusCode: response.statusCode }),
+    },
+  });
+}
