@@ -44,6 +44,11 @@ export const useSessionStore = defineStore('session', () => {
     me.value = null;
   }
 
+  /** The session has ended on the server. */
+  function forget(): void {
+    me.value = null;
+  }
+
   const memberships = computed(() => me.value?.memberships ?? []);
 
   function roleIn(workspaceId: string): Role | null {
@@ -66,6 +71,7 @@ export const useSessionStore = defineStore('session', () => {
     signIn,
     signUp,
     signOut,
+    forget,
     roleIn,
     may,
   };
