@@ -217,6 +217,14 @@ function listenToAxis(
     },
     { signal },
   );
+  window.addEventListener(
+    'pointercancel',
+    () => {
+      start = null;
+      paint(0, 0);
+    },
+    { signal },
+  );
   element.addEventListener('dblclick', () => events.onWindow(null), { signal });
   return () => controller.abort();
 }

@@ -1,13 +1,16 @@
 import type { UndirectedGraph } from 'graphology';
 
 /**
- * What a set of nodes adds to the modularity Q of an unweighted graph: L/m - (d/2m)², where L edges
- * lie inside the set, d is the sum of its degrees and m the number of edges
+ * The term L/m - (d/2m)² of one community: L edges inside, d the sum of its degrees, m edges in all
  * (Newman, Girvan, Phys. Rev. E 69 (2004) 026113). 0 for a graph without edges.
  */
+export const modularityTerm = (inside: number, degrees: number, edges: number): number =>
+  edges === 0 ? 0 : inside / edges - (degrees / (2 * edges)) ** 2;
+
+/**
+ * What a set of nodes adds to the modularity Q of an unweighted graph (see `modularityTerm`).
+ */
 export function modularityShare(graph: UndirectedGraph, members: Iterable<string>): number {
-  const edges = graph.size;
-  if (edges === 0) return 0;
   const inside = new Set(members);
   let degrees = 0;
   let ends = 0;
@@ -17,7 +20,7 @@ export function modularityShare(graph: UndirectedGraph, members: Iterable<string
       if (inside.has(neighbour)) ends += 1;
     });
   }
-  return ends / 2 / edges - (degrees / (2 * edges)) ** 2;
+  return modularityTerm(ends / 2, degrees, graph.size);
 }
 
 /** Modularity Q of a partition: the sum of its shares. Between -1/2 and 1. */

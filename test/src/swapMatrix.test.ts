@@ -7,7 +7,7 @@ import { measureField } from '../../src/graphs/measures';
 import { orderingOf } from '../../src/graphs/ordering';
 import { runSummary } from '../../src/graphs/runSummary';
 import { pairAt, pairIndex, pairsOf, SwapMatrix } from '../../src/graphs/swapMatrix';
-import { safePairsInside, swapSafeGraph } from '../../src/graphs/swapSafeGraph';
+import { groupFigures, safePairs, swapSafeGraph } from '../../src/graphs/swapSafeGraph';
 
 /** A block of the rows given whose distance in dimension k is `d(k, p, q)` and whose gap is its floor. */
 function blockOf(
@@ -162,9 +162,10 @@ describe('swap-safe pairs', () => {
   });
 
   it('make the swap-safe graph', () => {
-    const graph = swapSafeGraph(twoBlocks(), [1, 2]);
+    const safe = safePairs(twoBlocks(), [1, 2]);
+    const graph = swapSafeGraph(5, safe);
     expect([graph.order, graph.size]).toEqual([5, 4]);
-    expect(safePairsInside(twoBlocks(), [1, 2], [0, 2, 3])).toEqual({ safe: 1, pairs: 3 });
+    expect(groupFigures(5, safe, [0, 2, 3])).toEqual({ safe: 1, pairs: 3, degrees: 5, edges: 4 });
   });
 
   it('are counted for the whole run, beside those that move by more than half their bound', () => {
