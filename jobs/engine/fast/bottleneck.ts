@@ -32,6 +32,8 @@ export class BottleneckSweep {
   /** Bars of the searching side reached in this search. */
   private readonly frontier: Int32Array;
   private readonly capacity: number;
+  /** Changed bars of one side by falling length. */
+  private readonly order: Int32Array;
   private run = 0;
   private search = 0;
   private delta = 0;
@@ -58,27 +60,41 @@ export class BottleneckSweep {
     this.seen = budget.int32(this.capacity);
     this.from = budget.int32(this.capacity);
     this.frontier = budget.int32(this.capacity);
+    this.order = budget.int32(this.capacity);
   }
 
   /** @param floor a known lower bound of the whole distance: nothing smaller is looked for. */
   distance(changes: DimensionChanges, floor: number): number {
     this.run++;
     this.delta = floor;
-    const removed = this.markRemoved(changes);
+    this.markRemoved(changes);
     this.takeAdded(changes);
     this.side = 0;
-    for (const bar of removed) this.cover(bar);
+    this.coverAll(changes.removedCount);
     this.side = 1;
-    const added = Array.from({ length: this.addedCount }, (_, i) => this.count + i);
-    added.sort((x, y) => this.half(y) - this.half(x) || x - y);
-    for (const bar of added) if (this.mate(1, bar) < 0) this.cover(bar);
+    for (let i = 0; i < this.addedCount; i++) this.order[i] = this.count + i;
+    this.coverAll(this.addedCount);
     return this.delta;
   }
 
-  /** Removed bars, longest first. Equal bars lie side by side, so that repeats take the next one. */
-  private markRemoved(changes: DimensionChanges): number[] {
+  /** Covers the bars order[0..count-1], longest first. */
+  private coverAll(count: number): void {
+    const { order } = this;
+    for (let i = 1; i < count; i++) {
+      const bar = order[i]!;
+      const half = this.half(bar);
+      let j = i - 1;
+      for (; j >= 0 && this.half(order[j]!) < half; j--) order[j + 1] = order[j]!;
+      order[j + 1] = bar;
+    }
+    for (let i = 0; i < count && this.half(order[i]!) > this.delta; i++) {
+      if (this.mate(this.side, order[i]!) < 0) this.cover(order[i]!);
+    }
+  }
+
+  /** Puts the removed bars into `order`. Equal bars lie side by side, so that repeats take the next one. */
+  private markRemoved(changes: DimensionChanges): void {
     const { keys } = this.bars;
-    const found: number[] = [];
     let index = -1;
     for (let i = 0; i < changes.removedCount; i++) {
       const key = changes.removed[i]!;
@@ -87,9 +103,8 @@ export class BottleneckSweep {
       if (keys[index] !== key) throw new Error('A swap removed a bar that was not recorded.');
       this.removed[index] = this.run;
       this.setMate(0, index, -1);
-      found.push(index);
+      this.order[i] = index;
     }
-    return found.sort((x, y) => this.half(y) - this.half(x) || x - y);
   }
 
   private takeAdded(changes: DimensionChanges): void {

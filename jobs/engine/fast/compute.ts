@@ -1,6 +1,6 @@
 import type { Control, RowResults } from '../types';
 import { BettiGap } from './betti-gap';
-import { infiniteDistance } from './births';
+import { InfiniteBirths } from './births';
 import { BottleneckSweep } from './bottleneck';
 import { Changes, type DimensionChanges } from './changes';
 import { Overlay } from './overlay';
@@ -34,7 +34,7 @@ export class MatrixComputation {
   private readonly sweeps: readonly RowSweep[];
   private readonly bottlenecks: BottleneckSweep[] = [];
   private readonly gap: BettiGap;
-  private readonly queue: number[] = [];
+  private readonly births: readonly InfiniteBirths[];
 
   constructor(
     private readonly foundation: Foundation,
@@ -47,6 +47,9 @@ export class MatrixComputation {
     this.overlay = new Overlay(tables, recorded, bars, this.row, this.changes, this.pulse);
     this.sweeps = bars.events.map(
       (events, k) => new RowSweep(scale, events, this.row.finite[k]!, this.row.alive[k]!),
+    );
+    this.births = bars.bars.map(
+      ({ infinite }) => new InfiniteBirths(infinite, scale.value, tables.budget),
     );
     this.gap = new BettiGap(scale.value.length);
   }
@@ -101,7 +104,7 @@ export class MatrixComputation {
 
   private distance(k: number, changes: DimensionChanges): number {
     const { bars, scale, tables } = this.foundation;
-    const floor = infiniteDistance(bars.bars[k]!.infinite, scale.value, changes, this.queue);
+    const floor = changes.rankCount === 0 ? 0 : this.births[k]!.distance(changes);
     if (changes.removedCount + changes.addedCount === 0) return floor;
     let sweep = this.bottlenecks[k];
     if (sweep === undefined || sweep.mostAdded < changes.addedCount) {

@@ -1,5 +1,6 @@
 import type { Changes } from './changes';
 import { OverlayColumn, Part } from './overlay-column';
+import { IntPool } from './pool';
 import type { RecordedBars } from './recorded-bars';
 import type { Recorded } from './recorded';
 import type { RowComplex } from './row';
@@ -15,7 +16,7 @@ import type { Tables } from './tables';
 export class Overlay {
   private readonly column: OverlayColumn;
   /** Columns of K that need work after q whatever b is: column and last q, per dimension. */
-  private readonly active: { readonly column: number[]; readonly until: number[] }[];
+  private readonly active: { readonly columns: IntPool; readonly until: IntPool }[];
 
   constructor(
     private readonly tables: Tables,
@@ -26,27 +27,30 @@ export class Overlay {
     pulse: Pulse,
   ) {
     this.column = new OverlayColumn(tables, recorded, row, pulse);
-    this.active = Array.from({ length: tables.top + 1 }, () => ({ column: [], until: [] }));
+    this.active = tables.levels.map(() => ({
+      columns: new IntPool(tables.budget, 64),
+      until: new IntPool(tables.budget, 64),
+    }));
   }
 
   beginRow(): void {
-    for (const { column, until } of this.active) column.length = until.length = 0;
+    for (const { columns, until } of this.active) columns.length = until.length = 0;
   }
 
   /** Brings the sweep over q forward to q (each q of a row once, ascending). */
   advance(q: number): void {
     for (let d = 1; d <= this.tables.top; d++) {
-      const { column, until } = this.active[d]!;
+      const { columns, until } = this.active[d]!;
       let kept = 0;
-      for (let i = 0; i < column.length; i++) {
-        if (until[i]! < q) continue;
-        column[kept] = column[i]!;
-        until[kept++] = until[i]!;
+      for (let i = 0; i < columns.length; i++) {
+        if (until.data[i]! < q) continue;
+        columns.data[kept] = columns.data[i]!;
+        until.data[kept++] = until.data[i]!;
       }
-      column.length = until.length = kept;
+      columns.length = until.length = kept;
       const { head, next, keys, codes } = this.row.suffix[d]!;
       for (let item = head[q]!; item >= 0; item = next[item]!) {
-        column.push(keys[item]!);
+        columns.push(keys[item]!);
         until.push(codes[item]!);
       }
     }
@@ -168,7 +172,8 @@ export class Overlay {
     const { position } = tables.columns[d]!;
     const { start, columns } = bars.laterByPivot[d]!;
     for (let i = start[q]!; i < start[q + 1]!; i++) this.queue(d, columns[i]!);
-    for (const c of this.active[d]!.column) this.queue(d, c);
+    const active = this.active[d]!.columns;
+    for (let i = 0; i < active.length; i++) this.queue(d, active.data[i]!);
     while (later.peek() >= 0) {
       const c = later.take();
       column.addLaterColumn(c);

@@ -160,7 +160,7 @@ export class RowComplex {
     mate[pivot] = mateOfColumn(c);
     start[c] = store.length;
     rows.drain(store);
-    length[c] = store.length - start[c]!;
+    length[c] = store.length - start[c];
     return pivot;
   }
 
