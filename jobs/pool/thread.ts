@@ -1,0 +1,89 @@
+import {
+  ENGINE_VERSION,
+  computeRows,
+  estimate,
+  planBlocks,
+  prepare,
+  recordedBarcode,
+  similarity,
+  swapDetail,
+  type Prepared,
+} from '../engine/index';
+import { EngineInputError, EngineLimitError, EngineStopped, type Control } from '../engine/types';
+import type { Outcome, PairResult, PlanResult, ResultOf, Subject, Task } from './tasks';
+
+/** Prepared tables by subject, the latest used last. Two runs at a time share a thread well. */
+const kept = new Map<string, Prepared>();
+const MOST_KEPT = 2;
+
+function controlOf(control: Int32Array): Control {
+  return {
+    shouldStop: () => Atomics.load(control, 0) === 1,
+    onProgress: (pairsDone) => void Atomics.store(control, 1, pairsDone),
+  };
+}
+
+function preparedFor(subject: Subject, control: Control): Prepared {
+  const found = kept.get(subject.key);
+  kept.delete(subject.key);
+  if (!found) {
+    // Room first: the tables of one run may take most of what a thread is allowed.
+    while (kept.size >= MOST_KEPT) kept.delete(kept.keys().next().value ?? '');
+  }
+  const prepared = found ?? prepare(subject.network, subject.maxDimension, subject.limits, control);
+  kept.set(subject.key, prepared);
+  return prepared;
+}
+
+function plan(task: Task & { kind: 'plan' }, control: Control): PlanResult {
+  const { network, maxDimension, limits } = task.subject;
+  const estimated = estimate(network, maxDimension, limits);
+  const prepared = preparedFor(task.subject, control);
+  return {
+    engineVersion: ENGINE_VERSION,
+    estimate: estimated,
+    barcode: recordedBarcode(prepared),
+    blocks: planBlocks(prepared, task.secondsPerBlock),
+  };
+}
+
+function pair(task: Task & { kind: 'pair' }, control: Control): PairResult {
+  const detail = swapDetail(preparedFor(task.subject, control), task.p, task.q);
+  return { detail, similarity: similarity(detail.distances, detail.bound, task.dimensions) };
+}
+
+function run(task: Task): ResultOf<Task['kind']> {
+  const control = controlOf(task.control);
+  switch (task.kind) {
+    case 'plan':
+      return plan(task, control);
+    case 'rows':
+      return computeRows(preparedFor(task.subject, control), task.rows, control);
+    case 'pair':
+      return pair(task, control);
+  }
+}
+
+/** One task of the pool. */
+export default function work(task: Task): Outcome<ResultOf<Task['kind']>> {
+  try {
+    return { kind: 'finished', result: run(task) };
+  } catch (error) {
+    if (error instanceof EngineStopped) return { kind: 'stopped' };
+    if (error instanceof EngineLimitError) {
+      return { kind: 'refused', code: `engine.limit_${error.limit}`, message: error.message };
+    }
+    if (error instanceof EngineInputError) {
+      return { kind: 'refused', code: 'engine.input', message: error.message };
+    }
+    if (error instanceof RangeError && /allocation failed/i.test(error.message)) {
+      return {
+        kind: 'refused',
+        code: 'engine.out_of_memory',
+        message: 'This machine has no memory left for the tables of this run.',
+      };
+    }
+    const message = error instanceof Error ? (error.stack ?? error.message) : String(error);
+    return { kind: 'broken', message };
+  }
+}
