@@ -14,11 +14,11 @@ export const formatDate = (iso: string): string => dates.format(new Date(iso));
 export const formatNoun = (count: number, one: string, many = `${one}s`): string =>
   `${formatCount(count)} ${count === 1 ? one : many}`;
 
-/** @param bytes written in kB or MB of 1000 or 1000² bytes. */
+/** @param bytes written in KiB or MiB of 1024 or 1024² bytes. */
 export function formatBytes(bytes: number): string {
-  if (bytes < 1000) return formatNoun(bytes, 'byte');
-  if (bytes < 1e6) return `${formatCount(Math.round(bytes / 1e3))} kB`;
-  return `${formatCount(Math.round(bytes / 1e5) / 10)} MB`;
+  if (bytes < 1024) return formatNoun(bytes, 'byte');
+  if (bytes < 1024 ** 2) return `${formatCount(Math.round(bytes / 1024))} KiB`;
+  return `${formatCount(Math.round((10 * bytes) / 1024 ** 2) / 10)} MiB`;
 }
 
 /** Time left in words, rounded up so that it does not promise too much. */
