@@ -3,6 +3,7 @@ import { BettiGap } from './betti-gap';
 import { InfiniteBirths } from './births';
 import { BottleneckSweep } from './bottleneck';
 import { Changes, type DimensionChanges } from './changes';
+import { reduceLinks, type LinkColumns } from './links';
 import { Overlay } from './overlay';
 import { Pulse } from './pulse';
 import { reduceRecorded, type Recorded } from './recorded';
@@ -18,11 +19,17 @@ export interface Foundation {
   readonly scale: Scale;
   readonly recorded: Recorded;
   readonly bars: RecordedBars;
+  /** Per dimension of columns; absent where the zero test would cost more than it saves. */
+  readonly links: readonly (LinkColumns | undefined)[];
 }
 
 export function layFoundation(tables: Tables, scale: Scale, pulse: Pulse): Foundation {
   const recorded = reduceRecorded(tables, pulse);
-  return { tables, scale, recorded, bars: readRecordedBars(tables, recorded, scale) };
+  const bars = readRecordedBars(tables, recorded, scale);
+  const links = tables.levels.map((_, d) =>
+    d >= 2 && (globalThis as any).LINKS !== '0' ? reduceLinks(tables, d, pulse) : undefined,
+  );
+  return { tables, scale, recorded, bars, links };
 }
 
 /** Computes pairs of the matrix; keeps its buffers between rows. */
@@ -44,7 +51,15 @@ export class MatrixComputation {
     this.pulse = new Pulse(control);
     this.row = new RowComplex(tables, recorded, scale, this.pulse);
     this.changes = new Changes(tables.budget, tables.top, scale);
-    this.overlay = new Overlay(tables, recorded, bars, this.row, this.changes, this.pulse);
+    this.overlay = new Overlay(
+      tables,
+      recorded,
+      bars,
+      this.row,
+      this.changes,
+      this.pulse,
+      foundation.links,
+    );
     this.sweeps = bars.events.map(
       (events, k) => new RowSweep(scale, events, this.row.finite[k]!, this.row.alive[k]!),
     );

@@ -126,6 +126,12 @@ export class OverlayColumn {
     this.pulse.tick(2 * d);
   }
 
+  /** Adds a cycle without a: simplices cells[from..to-1]. */
+  addCycle(cells: Int32Array, from: number, to: number): void {
+    for (let i = from; i < to; i++) this.toggleWithoutA(cells[i]!);
+    this.pulse.tick(to - from);
+  }
+
   /** Starts from the reduced column of M. */
   addReducedOfM(c: number): void {
     const start = this.rowComplex.start[this.dimension]![c]!;

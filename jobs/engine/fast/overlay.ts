@@ -1,10 +1,14 @@
+import { Annotation } from './annotation';
 import type { Changes } from './changes';
+import type { LinkColumns } from './links';
 import { OverlayColumn, Part } from './overlay-column';
 import { IntPool } from './pool';
 import type { RecordedBars } from './recorded-bars';
 import type { Recorded } from './recorded';
 import type { RowComplex } from './row';
 import type { Pulse } from './pulse';
+import type { StarColumns } from './star-columns';
+import { StarZeros, Verdict } from './star-zeros';
 import type { Tables } from './tables';
 
 /**
@@ -15,6 +19,8 @@ import type { Tables } from './tables';
  */
 export class Overlay {
   private readonly column: OverlayColumn;
+  /** Per dimension of columns, what tells zero columns of stars beforehand; absent where it costs more. */
+  private readonly zeros: readonly (StarZeros | undefined)[];
   /** Columns of K that need work after q whatever b is: column and last q, per dimension. */
   private readonly active: { readonly columns: IntPool; readonly until: IntPool }[];
 
@@ -25,7 +31,13 @@ export class Overlay {
     private readonly row: RowComplex,
     private readonly changes: Changes,
     pulse: Pulse,
+    links: readonly (LinkColumns | undefined)[],
   ) {
+    this.zeros = links.map((link, d) =>
+      link === undefined
+        ? undefined
+        : new StarZeros(link, new Annotation(tables, recorded, row, d - 1, pulse), tables),
+    );
     this.column = new OverlayColumn(tables, recorded, row, pulse);
     this.active = tables.levels.map(() => ({
       columns: new IntPool(tables.budget, 64),
@@ -34,6 +46,7 @@ export class Overlay {
   }
 
   beginRow(): void {
+    for (const zeros of this.zeros) zeros?.prepare();
     for (const { columns, until } of this.active) columns.length = until.length = 0;
   }
 
@@ -98,6 +111,7 @@ export class Overlay {
     let j = single.start[q]!;
     const jEnd = single.start[q + 1]!;
     while (j < jEnd && singleNode[j]! < p) j++;
+    this.zeros[d]?.begin();
     for (;;) {
       const hasFree = i < iEnd && free.latest[i]! < q;
       const hasSingle = j < jEnd && singleNode[j] === p && single.latest[j]! < q;
@@ -108,24 +122,31 @@ export class Overlay {
       const m = evicted.peek();
       if (m >= 0 && tables.columns[d]!.position[m]! <= time) this.reduceEvicted(d, evicted.take());
       else if (hasFree || hasSingle) {
-        if (list.elder[k] !== p) this.reduceStarColumn(d, list.entry[k]!, list.local[k]!, time);
+        this.reduceStarColumn(d, list, k, time);
         if (takeSingle) j++;
         else i++;
       } else return;
     }
   }
 
-  private reduceStarColumn(d: number, entry: number, local: number, time: number): void {
+  private reduceStarColumn(d: number, list: StarColumns, k: number, time: number): void {
     const { column, tables, changes } = this;
     const { p } = column;
-    if (d === 1 && entry === column.unionOfB) return;
+    const entry = list.entry[k]!;
+    // Without a it is the first union of its facet, hence paired for nothing.
+    if (list.elder[k] === p || (d === 1 && entry === column.unionOfB)) return;
     const { nodes } = tables.levels[d]!;
     const at = entry - (entry % (d + 1));
-    for (let k = at; k <= at + d; k++) if (nodes[k] === p) return;
-    const claimed = d < tables.top && column.claimB[d]![local]! >= column.base;
+    for (let i = at; i <= at + d; i++) if (nodes[i] === p) return;
+    const claimed = d < tables.top && column.claimB[d]![list.local[k]!]! >= column.base;
     if (!claimed) {
-      column.addStarB(entry);
-      if (column.reduce(time, this.row.start[d]!.length, -1)) return this.settle(d, time);
+      const zeros = list === tables.starColumns[d]!.free ? this.zeros[d] : undefined;
+      const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(k, p, time);
+      if (verdict === Verdict.Cycle) zeros!.addTo(column, k);
+      else if (verdict === Verdict.Unknown) column.addStarB(entry);
+      if (verdict !== Verdict.Zero && column.reduce(time, this.row.start[d]!.length, -1)) {
+        return this.settle(d, time);
+      }
     }
     if (d < tables.top) changes.infinite(d, time, 1);
   }
@@ -135,7 +156,7 @@ export class Overlay {
     const { column, tables, changes } = this;
     const { simplex, position } = tables.columns[d]!;
     const claimed = d < tables.top && column.claimM[d]![simplex[c]!]! >= column.base;
-    if (!claimed) {
+    if (!claimed && this.zeros[d]?.endsCombination(c) !== true) {
       column.addReducedOfM(c);
       if (column.reduce(column.q, c, -1)) return this.settle(d, position[c]!);
     }
@@ -147,13 +168,17 @@ export class Overlay {
     const { column, tables, changes } = this;
     const { p, q } = column;
     const { free } = tables.starColumns[d]!;
+    const zeros = this.zeros[d];
+    zeros?.begin();
     for (let i = free.start[p]!; i < free.start[p + 1]! && free.latest[i]! <= q; i++) {
       const entry = free.entry[i]!;
       if (d === 1 && entry === column.unionOfA) continue;
       const claimed = d < tables.top && column.claimA[d]![free.local[i]!]! >= column.base;
       if (!claimed) {
-        column.addStarA(entry);
-        if (column.reduce(q, this.row.start[d]!.length, -1)) {
+        const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(i, -1, q);
+        if (verdict === Verdict.Cycle) zeros!.addTo(column, i);
+        else if (verdict === Verdict.Unknown) column.addStarA(entry);
+        if (verdict !== Verdict.Zero && column.reduce(q, this.row.start[d]!.length, -1)) {
           this.settle(d, q);
           continue;
         }

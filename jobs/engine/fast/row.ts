@@ -1,5 +1,6 @@
 import { Agenda } from './agenda';
 import { RowSet } from './bitset';
+import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, Status, type Recorded } from './recorded';
 import type { Scale } from './scale';
@@ -30,6 +31,9 @@ export class RowComplex {
   /** Columns of K (key) that need work after q, from this position to the one in `codes`. */
   readonly suffix: readonly Agenda[];
 
+  /** Simplices of each dimension whose class never dies in M. */
+  readonly unclaimed: readonly IntPool[];
+
   private node = -1;
   private readonly rows: RowSet;
   private readonly recordedLength: number;
@@ -50,6 +54,7 @@ export class RowComplex {
     this.finite = agendas(top);
     this.alive = agendas(top);
     this.suffix = agendas(top + 1);
+    this.unclaimed = levels.slice(0, top).map(() => new IntPool(budget, 64));
     this.rows = new RowSet(budget, Math.max(...levels.slice(0, top).map((level) => level.count)));
     this.recordedLength = recorded.store.length;
     this.infinity = nodeCount;
@@ -61,6 +66,7 @@ export class RowComplex {
     this.node = a;
     recorded.store.length = this.recordedLength;
     for (const agenda of [...this.finite, ...this.alive, ...this.suffix]) agenda.clear();
+    for (const pool of this.unclaimed) pool.length = 0;
     for (let d = 0; d < tables.top; d++) {
       this.mate[d]!.set(recorded.mate[d]!);
       this.skipFirstChildren(d);
@@ -121,7 +127,9 @@ export class RowComplex {
       this.compareBars(d, c, status, pivot);
     } else if (status === Status.Negative) this.compareBars(d, c, status, -1);
     if (touched && status === Status.Negative) this.noteTouched(d, c);
-    if (d < top) this.compareClass(d, s, columns[d]!.position[c]!, status, positive);
+    if (d === top) return;
+    if (positive && this.mate[d]![s] === -1) this.unclaimed[d]!.push(s);
+    this.compareClass(d, s, columns[d]!.position[c]!, status, positive);
   }
 
   private contains(d: number, s: number): boolean {
