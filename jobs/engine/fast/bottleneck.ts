@@ -31,9 +31,12 @@ export class BottleneckSweep {
   private readonly from: Int32Array;
   /** Bars of the searching side reached in this search. */
   private readonly frontier: Int32Array;
+  /** Half the length of each. */
+  private readonly halves: Float64Array;
   private readonly capacity: number;
-  /** Changed bars of one side by falling length. */
+  /** The removed and the added bars, by falling length while they are covered. */
   private readonly order: Int32Array;
+  private readonly added: Int32Array;
   private run = 0;
   private search = 0;
   private delta = 0;
@@ -59,8 +62,10 @@ export class BottleneckSweep {
     this.mateStamps = [budget.int32(this.capacity), budget.int32(this.capacity)];
     this.seen = budget.int32(this.capacity);
     this.from = budget.int32(this.capacity);
+    this.halves = budget.float64(this.capacity);
     this.frontier = budget.int32(this.capacity);
     this.order = budget.int32(this.capacity);
+    this.added = budget.int32(mostAdded);
   }
 
   /** @param floor a known lower bound of the whole distance: nothing smaller is looked for. */
@@ -69,26 +74,38 @@ export class BottleneckSweep {
     this.delta = floor;
     this.markRemoved(changes);
     this.takeAdded(changes);
+    const { order, added } = this;
+    this.search++;
     this.side = 0;
-    this.coverAll(changes.removedCount);
+    this.raiseToNearest(order, changes.removedCount);
     this.side = 1;
-    for (let i = 0; i < this.addedCount; i++) this.order[i] = this.count + i;
-    this.coverAll(this.addedCount);
+    this.raiseToNearest(added, this.addedCount);
+    this.side = 0;
+    this.coverAll(order, changes.removedCount);
+    this.side = 1;
+    this.coverAll(added, this.addedCount);
     return this.delta;
   }
 
-  /** Covers the bars order[0..count-1], longest first. */
-  private coverAll(count: number): void {
-    const { order } = this;
+  /** Lower bound: every bar goes at least to the nearest bar of the whole other side, or half its length. */
+  private raiseToNearest(bars: Int32Array, count: number): void {
+    for (let i = 0; i < count; i++) {
+      const half = this.half(bars[i]!);
+      if (half > this.delta) this.delta = Math.max(this.delta, this.nearest(bars[i]!, half));
+    }
+  }
+
+  /** Covers the given changed bars, longest first. */
+  private coverAll(bars: Int32Array, count: number): void {
     for (let i = 1; i < count; i++) {
-      const bar = order[i]!;
+      const bar = bars[i]!;
       const half = this.half(bar);
       let j = i - 1;
-      for (; j >= 0 && this.half(order[j]!) < half; j--) order[j + 1] = order[j]!;
-      order[j + 1] = bar;
+      for (; j >= 0 && this.half(bars[j]!) < half; j--) bars[j + 1] = bars[j]!;
+      bars[j + 1] = bar;
     }
-    for (let i = 0; i < count && this.half(order[i]!) > this.delta; i++) {
-      if (this.mate(this.side, order[i]!) < 0) this.cover(order[i]!);
+    for (let i = 0; i < count && this.half(bars[i]!) > this.delta; i++) {
+      if (this.mate(this.side, bars[i]!) < 0) this.cover(bars[i]!);
     }
   }
 
@@ -119,6 +136,7 @@ export class BottleneckSweep {
       this.addedBirths[i] = value[Math.floor(key / value.length)]!;
       this.addedDeaths[i] = value[key % value.length]!;
       this.setMate(1, count + i, -1);
+      this.added[i] = count + i;
     }
   }
 
@@ -127,9 +145,11 @@ export class BottleneckSweep {
     if (this.half(root) <= this.delta) return;
     this.search++;
     this.frontier[0] = root;
+    this.halves[0] = this.half(root);
     this.reached = 1;
     for (let next = 0; ;) {
       for (; next < this.reached; next++) {
+        this.bringShortest(next);
         if (this.expand(this.frontier[next]!)) return;
       }
       this.delta = this.nextDelta();
@@ -141,6 +161,15 @@ export class BottleneckSweep {
       }
       next = 0;
     }
+  }
+
+  /** Searches on from the shortest bar first: most paths end at the diagonal. */
+  private bringShortest(next: number): void {
+    const { frontier, halves } = this;
+    let best = next;
+    for (let i = next + 1; i < this.reached; i++) if (halves[i]! < halves[best]!) best = i;
+    [frontier[next], frontier[best]] = [frontier[best]!, frontier[next]!];
+    [halves[next], halves[best]] = [halves[best]!, halves[next]!];
   }
 
   /** Visits the bars of the other side within delta of `bar`; true if that completed a path. */
@@ -178,11 +207,13 @@ export class BottleneckSweep {
       this.augment(other);
       return true;
     }
-    if (this.half(partner) <= this.delta) {
+    const half = this.half(partner);
+    if (half <= this.delta) {
       this.setMate(this.side, partner, -1);
       this.augment(other);
       return true;
     }
+    this.halves[this.reached] = half;
     this.frontier[this.reached++] = partner;
     return false;
   }
