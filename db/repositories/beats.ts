@@ -9,11 +9,11 @@ export async function beat(db: Db): Promise<void> {
     on conflict (name) do update set consumed_at = now()`);
 }
 
-/** @returns when a job was last consumed, or null if none ever was. */
-export async function lastBeat(db: Db): Promise<Date | null> {
+/** @returns seconds since a job was last consumed, by the database's clock; null if none ever was. */
+export async function secondsSinceBeat(db: Db): Promise<number | null> {
   const [row] = await db
-    .select({ consumedAt: beats.consumedAt })
+    .select({ age: sql<number>`extract(epoch from now() - ${beats.consumedAt})::float8` })
     .from(beats)
     .where(eq(beats.name, 'queue'));
-  return row?.consumedAt ?? null;
+  return row?.age ?? null;
 }

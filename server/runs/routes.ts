@@ -1,0 +1,127 @@
+import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
+import type { Response } from 'express';
+import { z } from 'zod';
+import { createRunRequest } from '#contract/runs';
+import { csvLines } from '../../formats/csv';
+import { decodeBarcode } from '../../db/codecs/barcode';
+import type { Db } from '../../db/client';
+import type { Listener } from '../../db/listener';
+import { listNodes } from '../../db/repositories/revisions';
+import { findBarcode } from '../../db/repositories/runs';
+import type { Scope } from '../../db/repositories/scope';
+import type { Dependencies } from '../dependencies';
+import { nameDownload } from '../http/download';
+import { notFound } from '../http/parse';
+import { created, ok, route, SENT } from '../http/route';
+import type { RunRoutes } from '../routes';
+import { notDone, notPlanned } from './errors';
+import { streamEvents } from './events';
+import { matrixRows, readBlockBytes } from './matrix';
+import { readPair } from './pairs';
+import { presentBars } from './presenter';
+import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable, pairsTable } from './tables';
+import { endRun, readRun, requireRun, startRun } from './usecases';
+import { RunWatches } from './watches';
+
+const count = z
+  .string()
+  .regex(/^\d{1,9}$/)
+  .transform(Number);
+const oneRun = z.strictObject({ workspaceId: z.uuid(), runId: z.uuid() });
+const oneBlock = oneRun.extend({ block: count });
+const onePair = oneRun.extend({ a: count, b: count });
+
+/** Handlers of the routes below /runs; `listener` is the process's one listening connection. */
+export const makeRunRoutes =
+  (listener: Listener) =>
+  ({ database: { db }, log }: Dependencies): RunRoutes => {
+    const watches = new RunWatches(db, listener, (error) =>
+      log.warn({ err: error }, 'a watched run could not be read'),
+    );
+    return {
+      createRun: route('createRun', { body: createRunRequest }, async ({ member, body, request }) =>
+        created(await startRun(db, member, body, request.get('idempotency-key') ?? null)),
+      ),
+      run: route('run', { params: oneRun }, async ({ member, params }) =>
+        ok(await readRun(db, member, params.runId)),
+      ),
+      stopRun: route('stopRun', { params: oneRun }, async ({ member, params }) =>
+        ok(await endRun(db, member, params.runId)),
+      ),
+      runEvents: route('runEvents', { params: oneRun }, async ({ member, params, ...stream }) => {
+        await requireRun(db, member, params.runId);
+        const lastEventId = stream.request.get('last-event-id');
+        await streamEvents(watches, member, { ...stream, runId: params.runId, lastEventId });
+        return SENT;
+      }),
+      runBlock: route('runBlock', { params: oneBlock }, async ({ member, params, ...raw }) => {
+        const { runId, block } = params;
+        const etag = `"${runId}-${block}"`;
+        // A stored block never changes, so whoever has it needs no second copy.
+        const headers = { ETag: etag, 'Cache-Control': 'private, max-age=31536000, immutable' };
+        const bytes = await readBlockBytes(db, member, runId, block);
+        if (raw.request.get('if-none-match') === etag) {
+          raw.response.status(304).set(headers).end();
+          return SENT;
+        }
+        return { status: 200, bytes, contentType: 'application/octet-stream', headers };
+      }),
+      runBarcode: route('runBarcode', { params: oneRun }, async ({ member, params }) =>
+        ok({ bars: (await readBarcode(db, member, params.runId)).map(presentBars) }),
+      ),
+      runPair: route('runPair', { params: onePair }, async ({ member, params, signal }) =>
+        ok(await readPair(db, listener, member, params, signal)),
+      ),
+      runPairsCsv: route(
+        'runPairsCsv',
+        { params: oneRun },
+        async ({ member, params, response }) => {
+          const run = await requireRun(db, member, params.runId);
+          if (run.state !== 'done') throw notDone(run.state);
+          const nodes = await listNodes(db, member, run.revisionId);
+          const rows = matrixRows(db, member, run.id, run.nodeCount);
+          const { scale, dimensions } = run;
+          const table = pairsTable({ nodes, scale, dimensions, rows });
+          return sendCsv(
+            response,
+            `${run.datasetName} run ${run.number} pairs`,
+            PAIRS_HEADER,
+            table,
+          );
+        },
+      ),
+      runBarcodesCsv: route(
+        'runBarcodesCsv',
+        { params: oneRun },
+        async ({ member, params, response }) => {
+          const run = await requireRun(db, member, params.runId);
+          const table = barcodesTable(await readBarcode(db, member, params.runId));
+          const name = `${run.datasetName} run ${run.number} barcodes`;
+          return sendCsv(response, name, BARCODES_HEADER, table);
+        },
+      ),
+    };
+  };
+
+async function readBarcode(db: Db, scope: Scope, runId: string) {
+  const stored = await findBarcode(db, scope, runId);
+  if (stored === undefined) throw notFound('runs');
+  if (stored === null) throw notPlanned();
+  return decodeBarcode(stored);
+}
+
+async function sendCsv(
+  response: Response,
+  name: string,
+  header: readonly string[],
+  rows:
+    | AsyncIterable<readonly (string | number | null)[]>
+    | Iterable<readonly (string | number | null)[]>,
+): Promise<typeof SENT> {
+  nameDownload(response, name, 'csv');
+  response.status(200).setHeader('Content-Type', 'text/csv; charset=utf-8');
+  response.setHeader('Cache-Control', 'no-store');
+  await pipeline(Readable.from(csvLines(header, rows)), response);
+  return SENT;
+}

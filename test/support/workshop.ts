@@ -1,0 +1,224 @@
+import { spawn, type ChildProcess } from 'node:child_process';
+import { randomUUID } from 'node:crypto';
+import { once } from 'node:events';
+import { Redis } from 'ioredis';
+import pg from 'pg';
+import pino from 'pino';
+import type { Scale } from '../../server/contract/enums';
+import { encodeUint32 } from '../../db/codecs/typedArrays';
+import { openDatabase, type Database } from '../../db/client';
+import { openListener, type Listener } from '../../db/listener';
+import { migrateDatabase } from '../../db/migrate';
+import { createRun, findProgress, type RunProgress } from '../../db/repositories/runs';
+import type { Scope } from '../../db/repositories/scope';
+import {
+  datasets,
+  memberships,
+  revisionNodes,
+  revisions,
+  users,
+  workspaces,
+} from '../../db/schema/index';
+import { readConfig, type WorkerConfig } from '../../jobs/config';
+import type { Network } from '../../jobs/engine/types';
+import { startWorker, type RunningWorker } from '../../jobs/worker';
+import { buildScripts, type Scripts } from './scripts';
+
+const POSTGRES =
+  process.env['HEDDLE_TEST_DATABASE_URL'] ?? 'postgres://heddle@127.0.0.1:55432/postgres';
+const REDIS = process.env['HEDDLE_TEST_REDIS_URL'] ?? 'redis://127.0.0.1:56379/8';
+
+/** The Redis database after the tests' own: emptied by a test that no other may run beside. */
+export const FLUSHABLE_REDIS = Object.assign(new URL(REDIS), {
+  pathname: `/${Number(new URL(REDIS).pathname.slice(1) || 0) + 1}`,
+}).href;
+
+/** Polls a state until it holds. @throws Error with what was seen last when the deadline passes */
+export async function until<T>(
+  look: () => Promise<T>,
+  holds: (seen: T) => boolean,
+  seconds = 20,
+): Promise<T> {
+  const end = Date.now() + seconds * 1000;
+  for (;;) {
+    const seen = await look();
+    if (holds(seen)) return seen;
+    if (Date.now() > end) throw new Error(`Not within ${seconds} s: ${JSON.stringify(seen)}`);
+    await new Promise((resolve) => setTimeout(resolve, 20));
+  }
+}
+
+export interface Subject {
+  readonly scope: Scope;
+  readonly revisionId: string;
+}
+
+/** A database of its own, keys of its own in Redis, and workers in this process or beside it. */
+export class Workshop {
+  readonly #workers: RunningWorker[] = [];
+  readonly #children: ChildProcess[] = [];
+
+  private constructor(
+    readonly database: Database,
+    readonly listener: Listener,
+    readonly redis: Redis,
+    readonly prefix: string,
+    readonly scripts: Scripts,
+    private readonly name: string,
+  ) {}
+
+  /** @param redisUrl another Redis database where a test empties it */
+  static async open(redisUrl = REDIS): Promise<Workshop> {
+    const name = `heddle_jobs_${randomUUID().replaceAll('-', '')}`;
+    await onServer(`create database ${name}`);
+    const url = Object.assign(new URL(POSTGRES), { pathname: `/${name}` }).href;
+    await migrateDatabase(url);
+    const redis = new Redis(redisUrl);
+    const listener = openListener(url, () => undefined);
+    await listener.ready();
+    const prefix = `test-${name}`;
+    return new Workshop(openDatabase({ url }), listener, redis, prefix, await buildScripts(), name);
+  }
+
+  get db() {
+    return this.database.db;
+  }
+
+  environment(settings: Readonly<Record<string, string>> = {}): Record<string, string> {
+    const { host, port, db } = this.redis.options;
+    return {
+      DATABASE_URL: this.database.url,
+      REDIS_URL: `redis://${host}:${port}/${db}`,
+      HEDDLE_QUEUE_PREFIX: this.prefix,
+      HEDDLE_THREAD: this.scripts.thread,
+      HEDDLE_THREADS: '1',
+      HEDDLE_BLOCK_SECONDS: '0.05',
+      LOG_LEVEL: process.env['TEST_LOG_LEVEL'] ?? 'silent',
+      ...settings,
+    };
+  }
+
+  config(settings?: Readonly<Record<string, string>>): WorkerConfig {
+    return readConfig(this.environment(settings));
+  }
+
+  startWorker(settings?: Readonly<Record<string, string>>): RunningWorker {
+    const config = this.config(settings);
+    const worker = startWorker(config, pino({ level: config.logLevel }));
+    this.#workers.push(worker);
+    return worker;
+  }
+
+  /** The worker as its own process. */
+  spawnWorker(settings?: Readonly<Record<string, string>>): ChildProcess {
+    const child = spawn(process.execPath, [this.scripts.worker], {
+      env: { PATH: process.env['PATH'], ...this.environment(settings) },
+      stdio: ['ignore', 'inherit', 'inherit'],
+    });
+    this.#children.push(child);
+    return child;
+  }
+
+  /** A workspace with one dataset of this network and its analyst. */
+  async bring(network: Network): Promise<Subject> {
+    const [user] = await this.db
+      .insert(users)
+      .values({
+        name: 'Ada',
+        email: `${randomUUID()}@example.org`,
+        emailKey: randomUUID(),
+        passwordHash: '-',
+      })
+      .returning();
+    const [workspace] = await this.db.insert(workspaces).values({ name: 'Fen' }).returning();
+    if (!user || !workspace) throw new Error('Nothing was inserted.');
+    const workspaceId = workspace.id;
+    await this.db.insert(memberships).values({ workspaceId, userId: user.id, role: 'analyst' });
+    const [dataset] = await this.db
+      .insert(datasets)
+      .values({ workspaceId, name: 'Invented network', invented: true })
+      .returning();
+    const [revision] = await this.db
+      .insert(revisions)
+      .values({
+        workspaceId,
+        datasetId: dataset?.id ?? '',
+        number: 1,
+        contentHash: '0'.repeat(64),
+        nodeCount: network.nodeCount,
+        edgeCount: network.edges.length / 2,
+        entryUnit: 'number',
+        edges: encodeUint32(network.edges),
+        report: {},
+      })
+      .returning();
+    const revisionId = revision?.id ?? '';
+    await this.db.insert(revisionNodes).values(
+      Array.from(network.values, (entry, row) => ({
+        workspaceId,
+        revisionId,
+        row,
+        nodeId: `n${row}`,
+        label: `Node ${row}`,
+        entryRaw: String(entry),
+        entry,
+      })),
+    );
+    return { scope: { workspaceId, userId: user.id }, revisionId };
+  }
+
+  async submit(
+    { scope, revisionId }: Subject,
+    wanted: { scale?: Scale; dimensions?: number[]; key?: string } = {},
+  ): Promise<string> {
+    const made = await createRun(this.db, scope, {
+      revisionId,
+      scale: wanted.scale ?? 'entry',
+      dimensions: wanted.dimensions ?? [1, 2, 3],
+      idempotencyKey: wanted.key ?? null,
+    });
+    if (made.kind !== 'created' && made.kind !== 'repeated') throw new Error(made.kind);
+    return made.runId;
+  }
+
+  async progress(scope: Scope, runId: string): Promise<RunProgress> {
+    const progress = await findProgress(this.db, scope, runId);
+    if (!progress) throw new Error('The run is gone.');
+    return progress;
+  }
+
+  reached(
+    scope: Scope,
+    runId: string,
+    holds: (progress: RunProgress) => boolean,
+    seconds?: number,
+  ): Promise<RunProgress> {
+    return until(() => this.progress(scope, runId), holds, seconds);
+  }
+
+  async close(): Promise<void> {
+    for (const child of this.#children) {
+      if (child.exitCode === null && child.signalCode === null) {
+        child.kill('SIGKILL');
+        await once(child, 'exit');
+      }
+    }
+    await Promise.all(this.#workers.map((worker) => worker.close()));
+    await this.listener.close();
+    await this.database.close();
+    const keys = await this.redis.keys(`${this.prefix}:*`);
+    if (keys.length > 0) await this.redis.del(keys);
+    this.redis.disconnect();
+    await onServer(`drop database ${this.name} with (force)`);
+  }
+}
+
+async function onServer(statement: string): Promise<void> {
+  const client = new pg.Client(POSTGRES);
+  await client.connect();
+  try {
+    await client.query(statement);
+  } finally {
+    await client.end();
+  }
+}
