@@ -49,6 +49,13 @@ export const useRunsStore = defineStore('runs', () => {
     });
   }
 
+  /** Fetches a run as it stands now, e.g. why it failed. */
+  async function recall(workspaceId: string, runId: string): Promise<void> {
+    const { state, pairsDone, pairsTotal, failure } = await api.getRun(workspaceId, runId);
+    const known = { state, pairsDone, pairsTotal, failure, millisecondsLeft: null, down: false };
+    progress.value[runId] = known;
+  }
+
   const start = (workspaceId: string, body: CreateRunRequest, key: string): Promise<Run> =>
     api.createRun(workspaceId, body, key);
 
@@ -61,5 +68,5 @@ export const useRunsStore = defineStore('runs', () => {
   /** The latest known state of a run of a list. */
   const stateOf = (run: RunBrief): RunState => progress.value[run.id]?.state ?? run.state;
 
-  return { progress, follow, start, stop, stateOf };
+  return { progress, follow, recall, start, stop, stateOf };
 });
