@@ -1,3 +1,4 @@
+import type { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
 import type { RowComplex } from './row';
@@ -31,10 +32,13 @@ export class Annotation {
     this.bitOfColumn = budget.none(tables.columns[e + 1]!.count);
   }
 
-  /** Annotates M; false (and nothing is done) if that takes more than `mostWords` words. */
-  prepare(mostWords: number): boolean {
+  /**
+   * Annotates M; false (and nothing is done) if that takes more than `mostWords` words.
+   * @param unclaimed the simplices whose classes never die; negative ones may be among them
+   */
+  prepare(mostWords: number, unclaimed: IntPool): boolean {
     const finite = this.numberFiniteBars();
-    const total = finite + this.row.unclaimed[this.e]!.length;
+    const total = finite + unclaimed.length;
     this.words = (total + 31) >>> 5;
     if (this.words > mostWords) return false;
     const { budget, levels } = this.tables;
@@ -43,7 +47,6 @@ export class Annotation {
       budget.release(this.bits);
       this.bits = budget.int32(needed);
     } else this.bits.fill(0, 0, needed);
-    const unclaimed = this.row.unclaimed[this.e]!;
     for (let i = 0; i < unclaimed.length; i++) this.flip(unclaimed.data[i]!, finite + i);
     this.pass();
     return true;

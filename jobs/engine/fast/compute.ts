@@ -49,7 +49,13 @@ export class MatrixComputation {
   ) {
     const { tables, recorded, scale, bars } = foundation;
     this.pulse = new Pulse(control);
-    this.row = new RowComplex(tables, recorded, scale, this.pulse);
+    this.row = new RowComplex(
+      tables,
+      recorded,
+      scale,
+      this.pulse,
+      (d) => d >= 2 && (globalThis as any).LINKS !== '0' && (globalThis as any).LINKS !== '1',
+    );
     this.changes = new Changes(tables.budget, tables.top, scale);
     this.overlay = new Overlay(
       tables,

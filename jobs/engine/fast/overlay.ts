@@ -46,7 +46,7 @@ export class Overlay {
   }
 
   beginRow(): void {
-    for (const zeros of this.zeros) zeros?.prepare();
+    this.zeros.forEach((zeros, d) => zeros?.prepare(this.row.unclaimed[d - 1]!));
     for (const { columns, until } of this.active) columns.length = until.length = 0;
   }
 

@@ -3,6 +3,7 @@ import { RowSet } from './bitset';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, Status, type Recorded } from './recorded';
+import { Forecast, RowZeros } from './row-zeros';
 import type { Scale } from './scale';
 import type { Tables } from './tables';
 
@@ -35,7 +36,10 @@ export class RowComplex {
   readonly unclaimed: readonly IntPool[];
 
   private node = -1;
-  private readonly rows: RowSet;
+  /** The column under reduction. */
+  readonly rows: RowSet;
+  /** Per dimension of columns, what foresees zero columns; absent where it costs more. */
+  private readonly zeros: readonly (RowZeros | undefined)[];
   private readonly recordedLength: number;
   private readonly infinity: number;
 
@@ -44,8 +48,12 @@ export class RowComplex {
     private readonly recorded: Recorded,
     private readonly scale: Scale,
     private readonly pulse: Pulse,
+    foresee: (d: number) => boolean,
   ) {
     const { budget, top, nodeCount, levels } = tables;
+    this.zeros = levels.map((_, d) =>
+      foresee(d) ? new RowZeros(tables, recorded, this, d, pulse) : undefined,
+    );
     this.mate = recorded.mate.map((mate) => budget.int32(mate.length));
     this.start = recorded.reduced.map(({ start }) => budget.int32(start.length));
     this.length = recorded.reduced.map(({ length }) => budget.int32(length.length));
@@ -100,29 +108,47 @@ export class RowComplex {
       if ((reduced.touched[c * words + word]! & mask) === 0) continue;
       if (reduced.status[c] === Status.Negative) mate[store.data[reduced.start[c]!]!] = -1;
     }
-    for (let c = 0; c < count; c++) {
-      const touched = (reduced.touched[c * words + word]! & mask) !== 0;
-      this.visitColumn(d, c, touched);
-    }
+    this.zeros[d]?.foresee();
+    for (let c = 0; c < count; c++) this.visitColumn(d, c);
     this.pulse.tick(2 * count);
   }
 
-  /** Settles column c in M and notes how it differs from K. */
-  private visitColumn(d: number, c: number, touched: boolean): void {
-    const { columns, top } = this.tables;
-    const { simplex, onlyChild, elder } = columns[d]!;
+  /** True if a is in K's reduced column c or in anything added to it. */
+  isTouched(d: number, c: number): boolean {
+    const { reduced, words } = this.recorded;
+    const word = reduced[d]!.touched[c * words + (this.node >>> 5)]!;
+    return (word & (1 << (this.node & 31))) !== 0;
+  }
+
+  /** True if column c is critical in M and not claimed one dimension up. */
+  isOpen(d: number, c: number): boolean {
+    const { simplex } = this.tables.columns[d]!;
+    if (!this.isCritical(d, c)) return false;
+    return d === this.tables.top || this.mate[d]![simplex[c]!]! > -2;
+  }
+
+  private isCritical(d: number, c: number): boolean {
+    const { simplex, onlyChild, elder } = this.tables.columns[d]!;
     const a = this.node;
-    const s = simplex[c]!;
+    if (onlyChild[c]! >= 0 && onlyChild[c] !== a) return false;
+    return elder[c] !== a && !this.contains(d, simplex[c]!);
+  }
+
+  /** Settles column c in M and notes how it differs from K. */
+  private visitColumn(d: number, c: number): void {
+    const { columns, top } = this.tables;
+    const touched = this.isTouched(d, c);
+    const s = columns[d]!.simplex[c]!;
     const status = this.recorded.reduced[d]!.status[c]!;
-    const critical =
-      (onlyChild[c]! < 0 || onlyChild[c] === a) && elder[c] !== a && !this.contains(d, s);
+    const critical = this.isCritical(d, c);
     const claimed = critical && d < top && this.mate[d]![s]! <= -2;
     let positive = claimed;
     if (!touched && (status === Status.Negative || status === Status.Zero)) {
       // Reused as it is. Touched covers all columns that contain a or are no longer critical.
       positive = status === Status.Zero;
     } else if (critical && !claimed) {
-      const pivot = this.reduceColumn(d, c);
+      const foreseen = this.zeros[d]?.forecast[c] === Forecast.Zero;
+      const pivot = foreseen ? -1 : this.reduceColumn(d, c);
       positive = pivot < 0;
       this.compareBars(d, c, status, pivot);
     } else if (status === Status.Negative) this.compareBars(d, c, status, -1);
@@ -132,14 +158,15 @@ export class RowComplex {
     this.compareClass(d, s, columns[d]!.position[c]!, status, positive);
   }
 
-  private contains(d: number, s: number): boolean {
+  /** True if a is in simplex s. */
+  contains(d: number, s: number): boolean {
     const { nodes } = this.tables.levels[d]!;
     for (let i = s * (d + 1); i < (s + 1) * (d + 1); i++) if (nodes[i] === this.node) return true;
     return false;
   }
 
   /** Reduces column c in M, stores it and returns its pivot row, -1 if it became zero. */
-  private reduceColumn(d: number, c: number): number {
+  reduceColumn(d: number, c: number): number {
     const { rows, tables, recorded } = this;
     const { facets } = tables.levels[d]!;
     const { store } = recorded;

@@ -1,6 +1,7 @@
 import type { Annotation } from './annotation';
 import type { LinkColumns } from './links';
 import type { OverlayColumn } from './overlay-column';
+import type { IntPool } from './pool';
 import type { Tables } from './tables';
 import { ZeroTest } from './zero-test';
 
@@ -14,7 +15,7 @@ export const Verdict = {
 } as const;
 
 /** Widest annotation, in words, that is worth making. */
-const MOST_WORDS = 64;
+export const MOST_WORDS = 64;
 
 /** The zero test for the columns of one dimension of both stars. */
 export class StarZeros {
@@ -32,8 +33,8 @@ export class StarZeros {
   }
 
   /** Once per row, after M has been reduced. */
-  prepare(): void {
-    this.ready = this.annotation.prepare(MOST_WORDS);
+  prepare(unclaimed: IntPool): void {
+    this.ready = this.annotation.prepare(MOST_WORDS, unclaimed);
   }
 
   /** Before the columns of a star, which then come in order. */
@@ -49,7 +50,8 @@ export class StarZeros {
       const word = links.touched[c * words + (without >>> 5)]!;
       if ((word & (1 << (without & 31))) !== 0) return Verdict.Unknown;
     }
-    return this.test.isZero(links.cells, links.start[c]!, links.start[c + 1]!, time)
+    const dead = this.annotation.deadAt[time]!;
+    return this.test.isZero(links.cells, links.start[c]!, links.start[c + 1]!, dead)
       ? Verdict.Zero
       : Verdict.Cycle;
   }

@@ -39,13 +39,12 @@ export class ZeroTest {
   }
 
   /**
-   * True if the cycle cells[from..to-1] bounds at position `time`, up to earlier cycles; if not it
-   * joins the basis.
+   * True if the cycle cells[from..to-1] bounds once the first `dead` bits have died, up to earlier
+   * cycles; if not it joins the basis. `dead` must not fall from call to call.
    */
-  isZero(cells: Int32Array, from: number, to: number, time: number): boolean {
+  isZero(cells: Int32Array, from: number, to: number, dead: number): boolean {
     const { words, annotation, leaders, base } = this;
     const { bits } = annotation;
-    const dead = annotation.deadAt[time]!;
     const lowest = dead >>> 5;
     if ((this.size + 1) * words > this.basis.length) this.grow();
     const { basis } = this;
