@@ -67,7 +67,8 @@ export class House {
 
   /** Starts a run of the newest revision and waits until it is finished. */
   async finishedRun(workspaceId: string, { revisions }: Dataset): Promise<Run> {
-    const revisionId = revisions.at(-1)?.id;
+    const newest = [...revisions].sort((a, b) => b.number - a.number)[0];
+    const revisionId = newest?.id;
     const path = `/api/workspaces/${workspaceId}/runs`;
     const answer = await this.request.post(path, { data: { revisionId } });
     expect(answer.status(), await answer.text()).toBe(201);

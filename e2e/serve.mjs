@@ -9,6 +9,7 @@
 import { spawn } from 'node:child_process';
 import { randomBytes } from 'node:crypto';
 import { join } from 'node:path';
+import { Redis } from 'ioredis';
 import pg from 'pg';
 
 const root = join(import.meta.dirname, '..');
@@ -34,6 +35,15 @@ async function administer(sql) {
   }
 }
 
+/** Removes what the worker left in Redis under its own prefix. */
+async function forgetQueue() {
+  const client = new Redis(redis);
+  for await (const keys of client.scanStream({ match: `${database}:*`, count: 500 })) {
+    if (keys.length > 0) await client.del(keys);
+  }
+  client.disconnect();
+}
+
 const url = new URL(admin);
 url.pathname = `/${database}`;
 const environment = {
@@ -42,7 +52,6 @@ const environment = {
   HOST: '127.0.0.1',
   PORT: port,
   DATABASE_URL: url.href,
-  REDIS_URL: redis,
   PUBLIC_URL: `http://127.0.0.1:${port}`,
   HEDDLE_QUEUE_PREFIX: database,
   HEDDLE_SPA_DIR: join(root, 'dist/spa'),
@@ -52,10 +61,10 @@ const environment = {
 };
 
 const children = [];
-function start(file) {
+function start(file, more = {}) {
   const child = spawn(process.execPath, [join(root, 'dist', file)], {
     cwd: root,
-    env: environment,
+    env: { ...environment, ...more },
     stdio: ['ignore', 'inherit', 'inherit'],
   });
   children.push(child);
@@ -74,6 +83,7 @@ function close(code) {
     const all = Promise.all(running.map(ended));
     for (const child of running) child.kill('SIGTERM');
     await all;
+    await forgetQueue();
     await administer(`drop database if exists ${database} with (force)`);
     process.exit(code);
   })();
@@ -88,8 +98,13 @@ if (migrated !== 0) {
   console.error('The schema could not be made; the lines above say why.');
   await close(1);
 }
-for (const file of ['server.js', 'worker.js']) {
-  start(file).once('exit', (code) => {
+// The server gets no Redis: it counts sign-in attempts in its own memory then, so that one round of
+// tests does not use up the attempts of the next.
+for (const [file, more] of [
+  ['server.js', {}],
+  ['worker.js', { REDIS_URL: redis }],
+]) {
+  start(file, more).once('exit', (code) => {
     if (closing === undefined) {
       console.error(`${file} ended by itself with status ${code}.`);
       void close(1);
