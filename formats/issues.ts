@@ -1,0 +1,25 @@
+import type { FileIssue } from './types';
+
+/** Issues that are listed; those past it are only counted. */
+const LISTED = 200;
+
+/** Everything that is wrong with the files of one network. */
+export class IssueList {
+  readonly listed: FileIssue[] = [];
+  leftOut = 0;
+
+  add(issue: FileIssue): void {
+    if (this.listed.length < LISTED) this.listed.push(issue);
+    else this.leftOut++;
+  }
+
+  get any(): boolean {
+    return this.listed.length > 0;
+  }
+}
+
+/** @returns the text quoted for a message, cut where it is long. */
+export function quoted(text: string): string {
+  const shown = [...text].slice(0, 40).join('');
+  return `“${shown}${shown.length < text.length ? '…' : ''}”`;
+}
