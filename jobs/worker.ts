@@ -38,9 +38,23 @@ const handlersOf = (context: Context): Handlers => ({
   beat: () => beat(context.db),
 });
 
+/** Milliseconds in which the same trouble is logged once: a lost Redis fails many times a second. */
+const QUIET = 10_000;
+
+function troubleLog(log: Logger): (error: Error) => void {
+  const logged = new Map<string, number>();
+  return (error) => {
+    const now = Date.now();
+    if (now - (logged.get(error.message) ?? -Infinity) < QUIET) return;
+    if (logged.size > 100) logged.clear();
+    logged.set(error.message, now);
+    log.warn({ err: error }, 'trouble that the worker outlives');
+  };
+}
+
 /** Opens everything a worker needs and begins to take jobs. */
 export function startWorker(config: WorkerConfig, log: Logger): RunningWorker {
-  const onError = (error: Error) => log.warn({ err: error }, 'trouble outside this process');
+  const onError = troubleLog(log);
   const script = threadScript(config);
   const database = openDatabase({
     url: config.databaseUrl,

@@ -1,6 +1,6 @@
 import { UnrecoverableError, WaitingError, Worker, type Job } from 'bullmq';
 import { PAYLOADS, isJobName, type JobName, type Payload, type QueueName } from './jobs';
-import type { QueueConnection } from './producer';
+import { reconnecting, type QueueConnection } from './producer';
 
 /** Name → what is done with the parsed payload; exhaustive at compile time. */
 export type Handlers = { readonly [N in JobName]: (payload: Payload<N>) => Promise<void> };
@@ -47,8 +47,9 @@ export function openConsumer(
   handlers: Handlers,
   { redisUrl, prefix, onError }: QueueConnection,
 ): Consumer {
+  const closing = new AbortController();
   const worker = new Worker(queue, (job, token) => process(job, token, handlers), {
-    connection: { url: redisUrl, maxRetriesPerRequest: null, connectTimeout: 3_000 },
+    connection: { ...reconnecting(redisUrl, closing.signal), maxRetriesPerRequest: null },
     prefix,
     concurrency,
     // A killed worker's job is taken up again 10 to 15 s later; heartbeats are usually faster.
@@ -61,5 +62,10 @@ export function openConsumer(
   });
   worker.on('error', onError);
   worker.on('failed', (_job, error) => onError(error));
-  return { close: () => worker.close() };
+  return {
+    close() {
+      closing.abort();
+      return worker.close();
+    },
+  };
 }

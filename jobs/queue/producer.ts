@@ -17,6 +17,13 @@ export interface Producer {
   close(): Promise<void>;
 }
 
+/** Connects again and again until `closing` aborts: a process must be able to end while Redis is away. */
+export const reconnecting = (url: string, closing: AbortSignal) => ({
+  url,
+  connectTimeout: 3_000,
+  retryStrategy: (times: number) => (closing.aborted ? null : Math.min(1_000, 100 * times)),
+});
+
 /** Milliseconds after which Redis counts as away. */
 const DEADLINE = 5_000;
 
@@ -52,12 +59,11 @@ async function withinDeadline<T>(work: Promise<T>): Promise<T> {
 
 /** Opens the queues for adding; used by the relay only. */
 export function openProducer({ redisUrl, prefix, onError }: QueueConnection): Producer {
+  const closing = new AbortController();
   const connection = {
-    url: redisUrl,
+    ...reconnecting(redisUrl, closing.signal),
     maxRetriesPerRequest: 1,
     enableOfflineQueue: false,
-    connectTimeout: 3_000,
-    retryStrategy: (times: number) => Math.min(2_000, 100 * times),
   };
   const queues = new Map<QueueName, Queue>(
     QUEUES.map((name) => [name, new Queue(name, { connection, prefix })]),
@@ -80,6 +86,7 @@ export function openProducer({ redisUrl, prefix, onError }: QueueConnection): Pr
     },
     stateOf: (queue, jobId) => withinDeadline(queueOf(queue).getJobState(jobId)),
     async close() {
+      closing.abort();
       await Promise.allSettled([...queues.values(), flows].map((open) => open.close()));
     },
   };

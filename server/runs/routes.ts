@@ -3,7 +3,7 @@ import { pipeline } from 'node:stream/promises';
 import type { Response } from 'express';
 import { z } from 'zod';
 import { createRunRequest } from '#contract/runs';
-import { csvLines } from '../../formats/csv';
+import { csvLines, type Cell } from '../../formats/csv';
 import { decodeBarcode } from '../../db/codecs/barcode';
 import type { Db } from '../../db/client';
 import type { Listener } from '../../db/listener';
@@ -115,9 +115,7 @@ async function sendCsv(
   response: Response,
   name: string,
   header: readonly string[],
-  rows:
-    | AsyncIterable<readonly (string | number | null)[]>
-    | Iterable<readonly (string | number | null)[]>,
+  rows: AsyncIterable<readonly Cell[]> | Iterable<readonly Cell[]>,
 ): Promise<typeof SENT> {
   nameDownload(response, name, 'csv');
   response.status(200).setHeader('Content-Type', 'text/csv; charset=utf-8');

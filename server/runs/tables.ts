@@ -2,10 +2,8 @@ import { MAX_DIMENSION } from '#contract/enums';
 import type { StoredBars } from '../../db/codecs/barcode';
 import type { Scale } from '#contract/enums';
 import { arrivalsOf } from './arrivals';
+import type { Cell } from '../../formats/csv';
 import type { MatrixRow } from './matrix';
-
-/** A cell of an exported table; null is written as an empty cell. */
-export type Cell = string | number | null;
 
 const DIMENSIONS = Array.from({ length: MAX_DIMENSION + 1 }, (_, k) => k);
 

@@ -1,5 +1,5 @@
 import { once } from 'node:events';
-import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
 import { findRun } from '../../db/repositories/runs';
 import { runBlocks } from '../../db/schema/index';
 import { eq } from 'drizzle-orm';
@@ -24,6 +24,7 @@ describe('a worker', () => {
     undisturbed = await storedHash(workshop.db, subject.scope, runId);
     await worker.close();
   });
+  afterEach(() => workshop.endWorkers());
   afterAll(() => workshop.close());
 
   const done = (runId: string) =>

@@ -153,17 +153,18 @@ export class Workshop {
       })
       .returning();
     const revisionId = revision?.id ?? '';
-    await this.db.insert(revisionNodes).values(
-      Array.from(network.values, (entry, row) => ({
-        workspaceId,
-        revisionId,
-        row,
-        nodeId: `n${row}`,
-        label: `Node ${row}`,
-        entryRaw: String(entry),
-        entry,
-      })),
-    );
+    if (network.nodeCount > 0)
+      await this.db.insert(revisionNodes).values(
+        Array.from(network.values, (entry, row) => ({
+          workspaceId,
+          revisionId,
+          row,
+          nodeId: `n${row}`,
+          label: `Node ${row}`,
+          entryRaw: String(entry),
+          entry,
+        })),
+      );
     return { scope: { workspaceId, userId: user.id }, revisionId };
   }
 
@@ -196,14 +197,19 @@ export class Workshop {
     return until(() => this.progress(scope, runId), holds, seconds);
   }
 
-  async close(): Promise<void> {
-    for (const child of this.#children) {
+  /** Ends every worker that was started so far. */
+  async endWorkers(): Promise<void> {
+    for (const child of this.#children.splice(0)) {
       if (child.exitCode === null && child.signalCode === null) {
         child.kill('SIGKILL');
         await once(child, 'exit');
       }
     }
-    await Promise.all(this.#workers.map((worker) => worker.close()));
+    await Promise.all(this.#workers.splice(0).map((worker) => worker.close()));
+  }
+
+  async close(): Promise<void> {
+    await this.endWorkers();
     await this.listener.close();
     await this.database.close();
     const keys = await this.redis.keys(`${this.prefix}:*`);
