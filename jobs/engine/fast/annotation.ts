@@ -33,15 +33,15 @@ export class Annotation {
   }
 
   /**
-   * Annotates M; false (and nothing is done) if that takes more than `mostWords` words.
+   * Annotates M; false (and nothing is done) if that takes more than `mostWork` units of work.
    * @param unclaimed the simplices whose classes never die; negative ones may be among them
    */
-  prepare(mostWords: number, unclaimed: IntPool): boolean {
+  prepare(mostWork: number, unclaimed: IntPool): boolean {
+    const { budget, levels } = this.tables;
     const finite = this.numberFiniteBars();
     const total = finite + unclaimed.length;
     this.words = (total + 31) >>> 5;
-    if (this.words > mostWords) return false;
-    const { budget, levels } = this.tables;
+    if (this.words * levels[this.e]!.count * (this.e + 1) > mostWork) return false;
     const needed = this.words * levels[this.e]!.count;
     if (this.bits.length < needed) {
       budget.release(this.bits);

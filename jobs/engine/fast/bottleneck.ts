@@ -68,6 +68,14 @@ export class BottleneckSweep {
     this.added = budget.int32(mostAdded);
   }
 
+  /** Gives its bytes back. */
+  release(budget: Budget): void {
+    const arrays = [this.removed, this.seen, this.from, this.frontier, this.order, this.added];
+    for (const array of [...arrays, ...this.mates, ...this.mateStamps, this.halves]) {
+      budget.release(array);
+    }
+  }
+
   /** @param floor a known lower bound of the whole distance: nothing smaller is looked for. */
   distance(changes: DimensionChanges, floor: number): number {
     this.run++;
@@ -156,7 +164,7 @@ export class BottleneckSweep {
       for (let i = 0; i < this.reached; i++) {
         const bar = this.frontier[i]!;
         if (this.half(bar) > this.delta) continue;
-        this.release(bar);
+        this.giveAway(bar);
         return;
       }
       next = 0;
@@ -219,7 +227,7 @@ export class BottleneckSweep {
   }
 
   /** `bar`, reached in this search, is short now: it gives its partner away. */
-  private release(bar: number): void {
+  private giveAway(bar: number): void {
     const other = this.mate(this.side, bar);
     if (other < 0) return;
     this.setMate(this.side, bar, -1);

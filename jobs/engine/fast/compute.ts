@@ -3,39 +3,18 @@ import { BettiGap } from './betti-gap';
 import { InfiniteBirths } from './births';
 import { BottleneckSweep } from './bottleneck';
 import { Changes, type DimensionChanges } from './changes';
-import { reduceLinks, type LinkColumns } from './links';
+import type { Foundation } from './foundation';
 import { Overlay } from './overlay';
-import { Pulse } from './pulse';
-import { reduceRecorded, type Recorded } from './recorded';
-import { readRecordedBars, type RecordedBars } from './recorded-bars';
 import { RowComplex } from './row';
 import { RowSweep } from './row-sweep';
-import type { Scale } from './scale';
-import type { Tables } from './tables';
 
-/** The recorded complex, reduced: what every row of the matrix starts from. */
-export interface Foundation {
-  readonly tables: Tables;
-  readonly scale: Scale;
-  readonly recorded: Recorded;
-  readonly bars: RecordedBars;
-  /** Per dimension of columns; absent where the zero test would cost more than it saves. */
-  readonly links: readonly (LinkColumns | undefined)[];
-}
-
-export function layFoundation(tables: Tables, scale: Scale, pulse: Pulse): Foundation {
-  const recorded = reduceRecorded(tables, pulse);
-  const bars = readRecordedBars(tables, recorded, scale);
-  const links = tables.levels.map((_, d) =>
-    d >= 2 && (globalThis as any).LINKS !== '0' ? reduceLinks(tables, d, pulse) : undefined,
-  );
-  return { tables, scale, recorded, bars, links };
-}
-
-/** Computes pairs of the matrix; keeps its buffers between rows. */
+/**
+ * Computes pairs of the matrix and keeps its buffers between rows. After an exception (a limit, a
+ * stop) the buffers are in no defined state and the object must be thrown away.
+ */
 export class MatrixComputation {
+  /** What the last swap changes, per dimension. */
   readonly changes: Changes;
-  private readonly pulse: Pulse;
   private readonly row: RowComplex;
   private readonly overlay: Overlay;
   private readonly sweeps: readonly RowSweep[];
@@ -43,19 +22,9 @@ export class MatrixComputation {
   private readonly gap: BettiGap;
   private readonly births: readonly InfiniteBirths[];
 
-  constructor(
-    private readonly foundation: Foundation,
-    control: Control,
-  ) {
-    const { tables, recorded, scale, bars } = foundation;
-    this.pulse = new Pulse(control);
-    this.row = new RowComplex(
-      tables,
-      recorded,
-      scale,
-      this.pulse,
-      (d) => d >= 2 && (globalThis as any).LINKS !== '0' && (globalThis as any).LINKS !== '1',
-    );
+  constructor(private readonly foundation: Foundation) {
+    const { tables, recorded, scale, bars, pulse, links, zeroTests } = foundation;
+    this.row = new RowComplex(tables, recorded, scale, pulse, zeroTests);
     this.changes = new Changes(tables.budget, tables.top, scale);
     this.overlay = new Overlay(
       tables,
@@ -63,8 +32,9 @@ export class MatrixComputation {
       bars,
       this.row,
       this.changes,
-      this.pulse,
-      foundation.links,
+      pulse,
+      links,
+      zeroTests,
     );
     this.sweeps = bars.events.map(
       (events, k) => new RowSweep(scale, events, this.row.finite[k]!, this.row.alive[k]!),
@@ -76,14 +46,16 @@ export class MatrixComputation {
   }
 
   /** All pairs (p, q), q > p, of the given rows. */
-  rows(rows: Uint32Array): RowResults {
-    const { nodeCount, top } = this.foundation.tables;
+  rows(rows: Uint32Array, control: Control): RowResults {
+    const { tables, pulse } = this.foundation;
+    const { nodeCount, top } = tables;
     let pairCount = 0;
     for (const p of rows) pairCount += nodeCount - 1 - p;
     const distances = new Float64Array(top * pairCount);
     const bettiGaps = new Int32Array(top * pairCount);
     let pair = 0;
-    this.pulse.pairsDone = 0;
+    pulse.begin(control);
+    pulse.look();
     for (const p of rows) {
       this.beginRow(p);
       for (let q = p + 1; q < nodeCount; q++, pair++) {
@@ -94,43 +66,49 @@ export class MatrixComputation {
           distances[k * pairCount + pair] = this.distance(k, changes);
           bettiGaps[k * pairCount + pair] = this.gap.of(changes);
         }
-        this.pulse.pairsDone = pair + 1;
-        this.pulse.tick(200);
+        pulse.pairsDone = pair + 1;
+        pulse.tick(200);
       }
     }
-    this.pulse.look();
+    pulse.look();
     return { rows: Uint32Array.from(rows), pairCount, distances, bettiGaps };
   }
 
   beginRow(p: number): void {
     this.row.take(p);
-    this.overlay.beginRow();
+    this.overlay.beginRow(p);
     for (const sweep of this.sweeps) sweep.begin();
   }
 
-  /** Leaves what the swap of positions p and q changes in `changes`; q ascends within a row. */
+  /** Leaves what the swap of positions p and q changes in `changes`; q takes every value after p. */
   swap(p: number, q: number): void {
     const { rank } = this.foundation.scale;
-    this.overlay.advance(q);
-    for (const sweep of this.sweeps) sweep.advance(q);
     // Equal values: the swap changes nothing.
     const moves = rank[p] !== rank[q];
+    this.advance(q);
     if (moves) this.overlay.swap(p, q);
-    this.sweeps.forEach((sweep, k) => {
+    for (let k = 0; k < this.sweeps.length; k++) {
       const changes = this.changes.dimensions[k]!;
-      if (moves) sweep.contribute(q, changes);
+      if (moves) this.sweeps[k]!.contribute(q, changes);
       changes.settle();
-    });
+    }
+  }
+
+  /** Brings a row's sweep over q forward without computing the pair. */
+  advance(q: number): void {
+    this.overlay.advance(q);
+    for (const sweep of this.sweeps) sweep.advance(q);
   }
 
   private distance(k: number, changes: DimensionChanges): number {
-    const { bars, scale, tables } = this.foundation;
+    const { bars, scale, tables, pulse } = this.foundation;
     const floor = changes.rankCount === 0 ? 0 : this.births[k]!.distance(changes);
     if (changes.removedCount + changes.addedCount === 0) return floor;
     let sweep = this.bottlenecks[k];
     if (sweep === undefined || sweep.mostAdded < changes.addedCount) {
       const most = 2 * changes.addedCount + 64;
-      sweep = new BottleneckSweep(bars.bars[k]!, scale.value, tables.budget, this.pulse, most);
+      sweep?.release(tables.budget);
+      sweep = new BottleneckSweep(bars.bars[k]!, scale.value, tables.budget, pulse, most);
       this.bottlenecks[k] = sweep;
     }
     return sweep.distance(changes, floor);

@@ -10,6 +10,7 @@ import type { Pulse } from './pulse';
 import type { StarColumns } from './star-columns';
 import { StarZeros, Verdict } from './star-zeros';
 import type { Tables } from './tables';
+import type { ZeroTests } from './zero-policy';
 
 /**
  * The barcode of the swapped order as a difference to the recorded one. Nodes a and b, recorded at
@@ -30,13 +31,19 @@ export class Overlay {
     private readonly bars: RecordedBars,
     private readonly row: RowComplex,
     private readonly changes: Changes,
-    pulse: Pulse,
+    private readonly pulse: Pulse,
     links: readonly (LinkColumns | undefined)[],
+    zeroTests: ZeroTests,
   ) {
     this.zeros = links.map((link, d) =>
       link === undefined
         ? undefined
-        : new StarZeros(link, new Annotation(tables, recorded, row, d - 1, pulse), tables),
+        : new StarZeros(
+            link,
+            new Annotation(tables, recorded, row, d - 1, pulse),
+            tables,
+            zeroTests,
+          ),
     );
     this.column = new OverlayColumn(tables, recorded, row, pulse);
     this.active = tables.levels.map(() => ({
@@ -45,8 +52,9 @@ export class Overlay {
     }));
   }
 
-  beginRow(): void {
-    this.zeros.forEach((zeros, d) => zeros?.prepare(this.row.unclaimed[d - 1]!));
+  /** After M of row p has been reduced. */
+  beginRow(p: number): void {
+    this.zeros.forEach((zeros, d) => zeros?.prepare(p, this.row.unclaimed[d - 1]!));
     for (const { columns, until } of this.active) columns.length = until.length = 0;
   }
 
@@ -141,12 +149,14 @@ export class Overlay {
     const claimed = d < tables.top && column.claimB[d]![list.local[k]!]! >= column.base;
     if (!claimed) {
       const zeros = list === tables.starColumns[d]!.free ? this.zeros[d] : undefined;
+      const before = this.pulse.work;
       const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(k, p, time);
       if (verdict === Verdict.Cycle) zeros!.addTo(column, k);
       else if (verdict === Verdict.Unknown) column.addStarB(entry);
       if (verdict !== Verdict.Zero && column.reduce(time, this.row.start[d]!.length, -1)) {
         return this.settle(d, time);
       }
+      zeros?.met(k, verdict === Verdict.Zero ? 0 : this.pulse.work - before);
     }
     if (d < tables.top) changes.infinite(d, time, 1);
   }
@@ -175,6 +185,7 @@ export class Overlay {
       if (d === 1 && entry === column.unionOfA) continue;
       const claimed = d < tables.top && column.claimA[d]![free.local[i]!]! >= column.base;
       if (!claimed) {
+        const before = this.pulse.work;
         const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(i, -1, q);
         if (verdict === Verdict.Cycle) zeros!.addTo(column, i);
         else if (verdict === Verdict.Unknown) column.addStarA(entry);
@@ -182,6 +193,7 @@ export class Overlay {
           this.settle(d, q);
           continue;
         }
+        zeros?.met(i, verdict === Verdict.Zero ? 0 : this.pulse.work - before);
       }
       if (d < tables.top) changes.infinite(d, q, 1);
     }

@@ -11,8 +11,20 @@ export class Pulse {
   /** Pairs finished so far, as reported to `onProgress`. */
   pairsDone = 0;
   private units = 0;
+  private done = 0;
 
-  constructor(private readonly control: Control) {}
+  constructor(private control: Control) {}
+
+  /** Answers to another control from now on. */
+  begin(control: Control): void {
+    this.control = control;
+    this.pairsDone = 0;
+  }
+
+  /** Units of work done since the pulse was made; a measure of cost that every machine repeats. */
+  get work(): number {
+    return this.done + this.units;
+  }
 
   /** Throws EngineStopped when asked to stop. */
   tick(units: number): void {
@@ -21,6 +33,7 @@ export class Pulse {
   }
 
   look(): void {
+    this.done += this.units;
     this.units = 0;
     if (this.control.shouldStop()) throw new EngineStopped('The computation was stopped.');
     this.control.onProgress(this.pairsDone);

@@ -36,6 +36,8 @@ export interface Recorded {
   readonly reduced: readonly ReducedColumns[];
   /** Reduced columns laid end to end; those of K first, what a row of the matrix needs behind. */
   readonly store: IntPool;
+  /** Per dimension 1..D+1, units of work that a column took on average until it was zero. */
+  readonly zeroCost: readonly number[];
   /** Words per touched bitset. */
   readonly words: number;
 }
@@ -64,26 +66,36 @@ export function reduceRecorded(tables: Tables, pulse: Pulse): Recorded {
     length: budget.int32(count),
     touched: budget.int32(count * words),
   }));
-  const recorded: Recorded = { mate, reduced, store: new IntPool(budget, 1 << 12), words };
+  const zeroCost = new Array<number>(top + 1).fill(0);
+  const recorded: Recorded = {
+    mate,
+    reduced,
+    store: new IntPool(budget, 1 << 12),
+    zeroCost,
+    words,
+  };
   const widest = Math.max(...levels.slice(0, top).map((level) => level.count));
   const rows = new RowSet(budget, widest);
-  for (let d = top; d >= 1; d--) reduceDimension(tables, recorded, d, rows, pulse);
+  for (let d = top; d >= 1; d--) zeroCost[d] = reduceDimension(tables, recorded, d, rows, pulse);
   return recorded;
 }
 
+/** Returns the work that a zero column took on average. */
 function reduceDimension(
   tables: Tables,
   recorded: Recorded,
   d: number,
   rows: RowSet,
   pulse: Pulse,
-): void {
+): number {
   const { levels, columns, top } = tables;
   const { facets } = levels[d]!;
   const { count, simplex, onlyChild } = columns[d]!;
   const { status, start, length } = recorded.reduced[d]!;
   const { store } = recorded;
   const mate = recorded.mate[d - 1]!;
+  let zeros = 0;
+  let zeroWork = 0;
   for (let c = 0; c < count; c++) {
     const s = simplex[c]!;
     if (onlyChild[c]! >= 0) continue;
@@ -93,8 +105,11 @@ function reduceDimension(
     }
     rows.toggleAll(facets, s * (d + 1), (s + 1) * (d + 1));
     touchSimplex(tables, recorded, d, c, s);
+    const before = pulse.work;
     const pivot = reduceColumn(tables, recorded, d, c, rows, pulse);
     if (pivot < 0) {
+      zeros++;
+      zeroWork += pulse.work - before;
       status[c] = Status.Zero;
       continue;
     }
@@ -104,6 +119,7 @@ function reduceDimension(
     rows.drain(store);
     length[c] = store.length - start[c]!;
   }
+  return zeros === 0 ? 0 : zeroWork / zeros;
 }
 
 /** Adds until the pivot row is free; returns it, or -1 if the column became zero. */

@@ -3,12 +3,9 @@ import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, Status, type Recorded } from './recorded';
 import type { RowComplex } from './row';
-import { MOST_WORDS } from './star-zeros';
 import type { Tables } from './tables';
+import type { ZeroTests } from './zero-policy';
 import { ZeroTest } from './zero-test';
-
-/** Fewest columns that may be spared for which an annotation is worth making. */
-const WORTH_WHILE = 24;
 
 /** What is known of a column of M before it is reduced. */
 export const Forecast = { Unknown: 0, Zero: 1 } as const;
@@ -22,6 +19,8 @@ export const Forecast = { Unknown: 0, Zero: 1 } as const;
 export class RowZeros {
   /** `Forecast` by column. */
   readonly forecast: Uint8Array;
+  /** Work that a column spares if it is known to be zero: what it took in K on average. */
+  private readonly saving: number;
   private readonly annotation: Annotation;
   private readonly test: ZeroTest;
   private readonly own: IntPool;
@@ -36,8 +35,10 @@ export class RowZeros {
     private readonly row: RowComplex,
     private readonly d: number,
     private readonly pulse: Pulse,
+    zeroTests: ZeroTests,
   ) {
     const { budget, columns } = tables;
+    this.saving = zeroTests === 'always' ? Infinity : recorded.zeroCost[d]!;
     this.forecast = budget.uint8(columns[d]!.count);
     this.annotation = new Annotation(tables, recorded, row, d - 1, pulse);
     this.test = new ZeroTest(this.annotation, budget);
@@ -52,7 +53,9 @@ export class RowZeros {
     const { presumed, pivots, row, recorded, d } = this;
     this.forecast.fill(Forecast.Unknown);
     this.collect();
-    if (presumed.length < WORTH_WHILE) return;
+    if (presumed.length === 0) return;
+    const mostWork = presumed.length * this.saving;
+    if (mostWork < this.tables.levels[d - 1]!.count * d) return;
     const { status } = recorded.reduced[d]!;
     const { length } = recorded.store;
     const mate = row.mate[d - 1]!;
@@ -64,7 +67,7 @@ export class RowZeros {
       if (pivot >= 0) pivots.push(pivot);
     }
     this.collectOwn();
-    if (this.annotation.prepare(MOST_WORDS, this.own)) this.testAll();
+    if (this.annotation.prepare(mostWork, this.own)) this.testAll();
     for (let i = 0; i < pivots.length; i++) mate[pivots.data[i]!] = -1;
     recorded.store.length = length;
   }

@@ -6,6 +6,7 @@ import { mateOfColumn, Status, type Recorded } from './recorded';
 import { Forecast, RowZeros } from './row-zeros';
 import type { Scale } from './scale';
 import type { Tables } from './tables';
+import type { ZeroTests } from './zero-policy';
 
 /** Birth and death rank of a bar as one exact number; sorts by birth, then death. */
 export function barKey(birthRank: number, deathRank: number, ranks: number): number {
@@ -48,11 +49,14 @@ export class RowComplex {
     private readonly recorded: Recorded,
     private readonly scale: Scale,
     private readonly pulse: Pulse,
-    foresee: (d: number) => boolean,
+    zeroTests: ZeroTests,
   ) {
     const { budget, top, nodeCount, levels } = tables;
+    // Dimension 1 is left out: its columns are edges, which cost next to nothing.
     this.zeros = levels.map((_, d) =>
-      foresee(d) ? new RowZeros(tables, recorded, this, d, pulse) : undefined,
+      d >= 2 && zeroTests !== 'never'
+        ? new RowZeros(tables, recorded, this, d, pulse, zeroTests)
+        : undefined,
     );
     this.mate = recorded.mate.map((mate) => budget.int32(mate.length));
     this.start = recorded.reduced.map(({ start }) => budget.int32(start.length));
