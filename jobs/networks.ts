@@ -2,17 +2,7 @@ import { decodeUint32 } from '../db/codecs/typedArrays';
 import type { Db } from '../db/client';
 import { readNetwork, type WorkRun } from '../db/repositories/runWork';
 import type { Network } from './engine/types';
-
-/** Steps 1, 2, … of the entries; equal entries share one. */
-export function denseRanks(entries: Float64Array): Float64Array {
-  const steps = new Map<number, number>();
-  for (const entry of [...new Set(entries)].sort((a, b) => a - b)) steps.set(entry, steps.size + 1);
-  return entries.map((entry) => steps.get(entry) ?? 0);
-}
-
-/** @returns the filtration value of every node row in the unit of the scale. */
-export const valuesOn = (scale: WorkRun['scale'], entries: Float64Array): Float64Array =>
-  scale === 'rank' ? denseRanks(entries) : entries;
+import { valuesOn } from './scales';
 
 function sharedUint32(source: Uint32Array): Uint32Array {
   const shared = new Uint32Array(new SharedArrayBuffer(source.byteLength));

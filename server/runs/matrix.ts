@@ -3,6 +3,7 @@ import { decodeUint32 } from '../../db/codecs/typedArrays';
 import type { Db } from '../../db/client';
 import { findBlock, listBlockRows } from '../../db/repositories/runBlocks';
 import type { Scope } from '../../db/repositories/scope';
+import type { MatrixRow } from '../../formats/matrixTable';
 import { encodeMatrixBlock } from '#contract/matrixBytes';
 import { notFound } from '../http/parse';
 import { requireRun } from './usecases';
@@ -23,14 +24,6 @@ export async function readBlockBytes(
     pairCount: stored.pairs,
     ...decodeBlockResult(stored.result),
   });
-}
-
-/** Results of the pairs (p, q), q = p + 1 .. n - 1, of one row. */
-export interface MatrixRow {
-  readonly p: number;
-  /** Distance in dimension k of the pair (p, p + 1 + i), or NaN where k was not computed. */
-  distance(k: number, i: number): number;
-  bettiGap(k: number, i: number): number;
 }
 
 interface LoadedBlock {

@@ -4,6 +4,7 @@ import type { Response } from 'express';
 import { z } from 'zod';
 import { createRunRequest } from '#contract/runs';
 import { csvLines, type Cell } from '../../formats/csv';
+import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable } from '../../formats/matrixTable';
 import { decodeBarcode } from '../../db/codecs/barcode';
 import type { Db } from '../../db/client';
 import type { Listener } from '../../db/listener';
@@ -20,7 +21,7 @@ import { streamEvents } from './events';
 import { matrixRows, readBlockBytes } from './matrix';
 import { readPair } from './pairs';
 import { presentBars } from './presenter';
-import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable, pairsTable } from './tables';
+import { pairsOfRows } from './tables';
 import { endRun, readRun, requireRun, startRun } from './usecases';
 import { RunWatches } from './watches';
 
@@ -82,7 +83,7 @@ export const makeRunRoutes =
           const nodes = await listNodes(db, member, run.revisionId);
           const rows = matrixRows(db, member, run.id, run.nodeCount);
           const { scale, dimensions } = run;
-          const table = pairsTable({ nodes, scale, dimensions, rows });
+          const table = pairsOfRows({ nodes, scale, dimensions, rows });
           return sendCsv(
             response,
             `${run.datasetName} run ${run.number} pairs`,

@@ -5,7 +5,7 @@ import { findBarcode, findRun, stopRun } from '../../db/repositories/runs';
 import { storeBlock } from '../../db/repositories/runWork';
 import { mails } from '../../db/schema/index';
 import { ENGINE_VERSION, prepare, recordedBarcode } from '../../jobs/engine/index';
-import { denseRanks } from '../../jobs/networks';
+import { denseRanks } from '../../jobs/scales';
 import { constantProbability, networkOf, risingProbability } from '../support/graphs';
 import { Workshop } from '../support/workshop';
 import { directMatrix, storedHash, storedMatrix } from '../support/wholeMatrix';
