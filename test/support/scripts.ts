@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { mkdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { build } from 'esbuild';
@@ -9,9 +10,9 @@ export interface Scripts {
   readonly thread: string;
 }
 
-/** Bundles the worker and its threads' script as they are now, into a folder of this process. */
+/** Bundles the worker and its threads' script as they are now, into a folder of their own. */
 export async function buildScripts(): Promise<Scripts> {
-  const folder = join(root, 'node_modules', '.cache', `heddle-test-${process.pid}`);
+  const folder = join(root, 'node_modules', '.cache', `heddle-test-${randomUUID()}`);
   mkdirSync(folder, { recursive: true });
   await build({
     absWorkingDir: root,

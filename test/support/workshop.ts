@@ -1,6 +1,8 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { randomUUID } from 'node:crypto';
 import { once } from 'node:events';
+import { rmSync } from 'node:fs';
+import { dirname } from 'node:path';
 import { Redis } from 'ioredis';
 import pg from 'pg';
 import pino from 'pino';
@@ -215,6 +217,7 @@ export class Workshop {
     const keys = await this.redis.keys(`${this.prefix}:*`);
     if (keys.length > 0) await this.redis.del(keys);
     this.redis.disconnect();
+    rmSync(dirname(this.scripts.worker), { recursive: true, force: true });
     await onServer(`drop database ${this.name} with (force)`);
   }
 }
