@@ -45,6 +45,8 @@ export class Activity {
     if (this.#closing.signal.aborted) throw new Handover();
     const entry: Work = { ...fence, ending: new AbortController() };
     this.#works.add(entry);
+    // The run may have ended between its claim and this moment, when nobody here was listening.
+    this.#wake();
     try {
       return await work(entry.ending.signal);
     } finally {

@@ -34,6 +34,7 @@ export interface MailRule {
 
 export interface EndedRun {
   readonly id: string;
+  readonly workspaceId: string;
   readonly number: number;
   readonly datasetName: string;
   readonly recipientName: string;
@@ -260,6 +261,7 @@ async function endRun(
   const { email, ...names } = about;
   const text = mail.compose({
     id: run.id,
+    workspaceId: run.workspaceId,
     number: run.number,
     ...names,
     state: end.state,

@@ -16,7 +16,8 @@ export function mailRule({ afterSeconds, publicUrl }: MailConfig): MailRule {
     compose(ended) {
       const run = `Run ${ended.number} of “${oneLine(ended.datasetName)}”`;
       const how = ended.state === 'done' ? 'is done' : 'has failed';
-      const address = publicUrl ? `\n\n${publicUrl.replace(/\/$/, '')}/runs/${ended.id}` : '';
+      const path = `/workspaces/${ended.workspaceId}/runs/${ended.id}`;
+      const address = publicUrl ? `\n\n${publicUrl.replace(/\/$/, '')}${path}` : '';
       const why = ended.failureMessage ? `\n\n${ended.failureMessage}` : '';
       return {
         subject: `${run} ${how}`,

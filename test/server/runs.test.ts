@@ -13,7 +13,7 @@ import { stopRun } from '../../db/repositories/runs';
 import { constantProbability, risingProbability, withEntries } from '../support/graphs';
 import { serve, type RunServer } from '../support/runServer';
 import { directMatrix, storedMatrix } from '../support/wholeMatrix';
-import { FLUSHABLE_REDIS, Workshop, until, type Subject } from '../support/workshop';
+import { Workshop, until, type Subject } from '../support/workshop';
 
 interface Event {
   readonly id: number;
@@ -29,7 +29,7 @@ describe('the routes of runs', () => {
   const network = withEntries(constantProbability(30, 0.4, 3), 'shuffled', 3);
 
   beforeAll(async () => {
-    workshop = await Workshop.open(FLUSHABLE_REDIS);
+    workshop = await Workshop.open();
     server = await serve(workshop);
     subject = await workshop.bring(network);
     runs = `${server.origin}/api/workspaces/${subject.scope.workspaceId}/runs`;
