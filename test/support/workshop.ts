@@ -59,6 +59,7 @@ export interface Subject {
 export class Workshop {
   readonly #workers: RunningWorker[] = [];
   readonly #children: ChildProcess[] = [];
+  readonly #others: string[] = [];
 
   private constructor(
     readonly database: Database,
@@ -80,6 +81,25 @@ export class Workshop {
     await listener.ready();
     const prefix = `test-${name}`;
     return new Workshop(openDatabase({ url }), listener, redis, prefix, await buildScripts(), name);
+  }
+
+  /** A further database without any table; dropped with this workshop. @returns its address */
+  async emptyDatabase(): Promise<string> {
+    const name = `${this.name.slice(0, 40)}_${this.#others.length}`;
+    await onServer(`create database ${name}`);
+    this.#others.push(name);
+    return Object.assign(new URL(POSTGRES), { pathname: `/${name}` }).href;
+  }
+
+  async rowsOf(url: string, statement: string): Promise<unknown[]> {
+    const client = new pg.Client(url);
+    await client.connect();
+    try {
+      const { rows } = await client.query<Record<string, unknown>>(statement);
+      return rows;
+    } finally {
+      await client.end();
+    }
   }
 
   get db() {
@@ -218,7 +238,9 @@ export class Workshop {
     if (keys.length > 0) await this.redis.del(keys);
     this.redis.disconnect();
     rmSync(dirname(this.scripts.worker), { recursive: true, force: true });
-    await onServer(`drop database ${this.name} with (force)`);
+    for (const name of [this.name, ...this.#others]) {
+      await onServer(`drop database ${name} with (force)`);
+    }
   }
 }
 
