@@ -205,18 +205,13 @@ export class RowComplex {
 
   /** Column c is negative in K with one bar and in M with another (pivot -1: with none). */
   private compareBars(d: number, c: number, status: number, pivot: number): void {
-    const { store, reduced, mate } = this.recorded;
+    const { store, reduced } = this.recorded;
     const position = this.tables.columns[d]!.position;
     const before = status === Status.Negative ? store.data[reduced[d]!.start[c]!]! : -1;
     if (before === pivot) return;
-    const from = position[c]! + 1;
     if (before >= 0) this.noteBar(d, before, position[c]!, -1);
     if (pivot < 0) return;
     this.noteBar(d, pivot, position[c]!, 1);
-    const holder = mate[d - 1]![pivot]!;
-    if (holder > -2) return;
-    const other = mateOfColumn(holder);
-    if (from < position[other]!) this.suffix[d]!.add(from, other, position[other]! - 1);
   }
 
   private noteBar(d: number, row: number, death: number, sign: number): void {
@@ -227,7 +222,11 @@ export class RowComplex {
     this.finite[d - 1]!.add(death + 1, barKey(birthRank, deathRank, value.length), sign);
   }
 
-  /** A column of K that still contains a changes whenever it is read after q. */
+  /**
+   * A column of K that still contains a changes whenever it is read after q. One without a never
+   * loses its pivot row r to M before q: what M reduces to r by then is a boundary in K too, so r
+   * would have died in K by then.
+   */
   private noteTouched(d: number, c: number): void {
     const { store, reduced } = this.recorded;
     const { nodes } = this.tables.levels[d - 1]!;
