@@ -1,0 +1,28 @@
+import { countCliques } from './cliques';
+import { rowSeconds, setUpSeconds } from './cost';
+import { arrivalOrder, orderGraph, validateNetwork } from './graph';
+import type { Estimate, Limits, Network } from './types';
+
+/** Bytes of tables and stored columns per clique. Common practice: fitted to measured peaks. */
+const BYTES_PER_CLIQUE = 120;
+const BYTES_PER_NODE = 4_000;
+
+/**
+ * What the whole matrix of a network needs, counted before anything is listed.
+ * @param limits counting stops once more than `limits.simplices` cliques are found
+ * @throws EngineInputError as `prepare`
+ */
+export function estimate(network: Network, maxDimension: number, limits: Limits): Estimate {
+  validateNetwork(network, maxDimension);
+  const { nodeCount } = network;
+  const graph = orderGraph(network, arrivalOrder(network.values));
+  const counts = countCliques(graph, maxDimension + 2, limits.simplices);
+  const rows = rowSeconds(counts);
+  return {
+    cliques: Array.from(counts.bySize),
+    exact: counts.exact,
+    pairs: (nodeCount * (nodeCount - 1)) / 2,
+    bytes: BYTES_PER_CLIQUE * counts.total + BYTES_PER_NODE * nodeCount,
+    seconds: rows.reduce((sum, seconds) => sum + seconds, setUpSeconds(counts)),
+  };
+}

@@ -1,0 +1,12 @@
+/** The engine's door: everything that the rest of the house may use. */
+
+/** Names a result together with its parameters; raised whenever a value could change. */
+export const ENGINE_VERSION = '1.0.0';
+
+export { arrivalOrder } from './graph';
+export { estimate } from './estimate';
+export { planBlocks } from './plan';
+export { prepare, recordedBarcode, type Prepared } from './prepared';
+export { computeRows } from './rows';
+export { similarity } from './similarity';
+export { swapDetail } from './swapDetail';
