@@ -4,7 +4,7 @@ import { findRun } from '../../db/repositories/runs';
 import { runBlocks } from '../../db/schema/index';
 import { eq } from 'drizzle-orm';
 import type { Network } from '../../jobs/engine/types';
-import { risingProbability } from '../support/graphs';
+import { networkTaking } from '../support/heavyNetwork';
 import { FLUSHABLE_REDIS, Workshop, type Subject } from '../support/workshop';
 import { storedHash } from '../support/wholeMatrix';
 
@@ -16,7 +16,7 @@ describe('a worker', () => {
 
   beforeAll(async () => {
     workshop = await Workshop.open(FLUSHABLE_REDIS);
-    network = risingProbability(64, 2);
+    network = networkTaking(4);
     subject = await workshop.bring(network);
     const worker = workshop.startWorker({ HEDDLE_THREADS: '2' });
     const runId = await workshop.submit(subject);

@@ -2,7 +2,8 @@ import { spawn, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
 import { createServer, type AddressInfo } from 'node:net';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
-import { constantProbability, risingProbability } from '../support/graphs';
+import { constantProbability } from '../support/graphs';
+import { networkTaking } from '../support/heavyNetwork';
 import { Workshop } from '../support/workshop';
 
 async function freePort(): Promise<number> {
@@ -52,7 +53,7 @@ describe('while Redis is away', () => {
   });
 
   test('and came back with nothing, a run goes on to its end', async () => {
-    const subject = await workshop.bring(risingProbability(60, 6));
+    const subject = await workshop.bring(networkTaking(4));
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ blocksDone }) => blocksDone > 0);
     await killRedis();

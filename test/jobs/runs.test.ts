@@ -6,7 +6,8 @@ import { storeBlock } from '../../db/repositories/runWork';
 import { mails } from '../../db/schema/index';
 import { ENGINE_VERSION, prepare, recordedBarcode } from '../../jobs/engine/index';
 import { denseRanks } from '../../jobs/scales';
-import { constantProbability, networkOf, risingProbability } from '../support/graphs';
+import { constantProbability, networkOf } from '../support/graphs';
+import { networkTaking } from '../support/heavyNetwork';
 import { Workshop } from '../support/workshop';
 import { directMatrix, storedHash, storedMatrix } from '../support/wholeMatrix';
 
@@ -82,7 +83,7 @@ describe('a run', () => {
   });
 
   test('that is stopped stays stopped, and nothing is written after', async () => {
-    const subject = await workshop.bring(risingProbability(70, 2));
+    const subject = await workshop.bring(networkTaking(4));
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ blocksDone }) => blocksDone > 0);
     const before = performance.now();
@@ -136,7 +137,7 @@ describe('a run', () => {
   });
 
   test('takes no row from a worker of an earlier attempt', async () => {
-    const subject = await workshop.bring(risingProbability(60, 8));
+    const subject = await workshop.bring(networkTaking(4));
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ blockCount }) => (blockCount ?? 0) > 1);
     await workshop.database.pool.query('update runs set attempt = attempt + 1 where id = $1', [

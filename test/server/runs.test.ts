@@ -10,7 +10,8 @@ import {
   type Run,
 } from '../../server/contract/runs';
 import { stopRun } from '../../db/repositories/runs';
-import { constantProbability, risingProbability, withEntries } from '../support/graphs';
+import { constantProbability, withEntries } from '../support/graphs';
+import { networkTaking } from '../support/heavyNetwork';
 import { serve, type RunServer } from '../support/runServer';
 import { directMatrix, storedMatrix } from '../support/wholeMatrix';
 import { Workshop, until, type Subject } from '../support/workshop';
@@ -179,7 +180,7 @@ describe('the routes of runs', () => {
     await finished(id);
     const line = (await (await get(`/${id}/pairs.csv`)).text()).split('\n')[1]?.split(',') ?? [];
     expect([line[7], line[8], line[11], line[12]]).toEqual(['', '', '', '']);
-    const slow = await workshop.bring(risingProbability(60, 4));
+    const slow = await workshop.bring(networkTaking(6));
     const other = await server.join(slow.scope.workspaceId, 'owner');
     const base = `${server.origin}/api/workspaces/${slow.scope.workspaceId}/runs`;
     const runId = await workshop.submit(slow);
@@ -203,7 +204,7 @@ describe('the routes of runs', () => {
   });
 
   test('a stopped run is stopped within a second, and its stream ends', async () => {
-    const slow = await workshop.bring(risingProbability(70, 4));
+    const slow = await workshop.bring(networkTaking(6));
     const { cookie: theirs } = await server.join(slow.scope.workspaceId, 'analyst');
     const base = `${server.origin}/api/workspaces/${slow.scope.workspaceId}/runs`;
     const runId = await workshop.submit(slow);
@@ -260,7 +261,7 @@ describe('the routes of runs', () => {
   });
 
   test('an open stream closes within five seconds of its reader’s removal', async () => {
-    const slow = await workshop.bring(risingProbability(70, 4));
+    const slow = await workshop.bring(networkTaking(6));
     const theirs = await server.join(slow.scope.workspaceId, 'reviewer');
     const base = `${server.origin}/api/workspaces/${slow.scope.workspaceId}/runs`;
     await workshop.endWorkers();
