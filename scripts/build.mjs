@@ -18,7 +18,7 @@ const ENTRIES = {
   worker: 'jobs/main.ts',
   thread: 'jobs/pool/thread.ts',
   matrix: 'jobs/matrix.ts',
-  seed: 'jobs/seed.ts',
+  seed: 'server/seed.ts',
   migrate: 'db/migrate.ts',
 };
 
