@@ -4,7 +4,7 @@ import type { Queryable, Transaction } from '../client';
 import { memberships } from '../schema/memberships';
 import { users } from '../schema/users';
 import { workspaces } from '../schema/workspaces';
-import type { WorkspaceActor } from './workspaceActor';
+import type { Scope } from './scope';
 
 export interface MemberRow {
   readonly userId: string;
@@ -46,8 +46,8 @@ export async function listMemberships(db: Queryable, userId: string): Promise<Me
     .orderBy(asc(workspaces.name), asc(workspaces.createdAt));
 }
 
-/** The members of the actor's workspace, by name. */
-export async function listMembers(db: Queryable, actor: WorkspaceActor): Promise<MemberRow[]> {
+/** The members of the workspace, by name. */
+export async function listMembers(db: Queryable, scope: Scope): Promise<MemberRow[]> {
   return db
     .select({
       userId: memberships.userId,
@@ -57,20 +57,20 @@ export async function listMembers(db: Queryable, actor: WorkspaceActor): Promise
     })
     .from(memberships)
     .innerJoin(users, eq(users.id, memberships.userId))
-    .where(eq(memberships.workspaceId, actor.workspaceId))
+    .where(eq(memberships.workspaceId, scope.workspaceId))
     .orderBy(asc(users.name), asc(users.emailKey));
 }
 
 /** @returns false where the person is a member already. */
 export async function insertMember(
   db: Queryable,
-  actor: WorkspaceActor,
+  scope: Scope,
   userId: string,
   role: Role,
 ): Promise<boolean> {
   const rows = await db
     .insert(memberships)
-    .values({ workspaceId: actor.workspaceId, userId, role })
+    .values({ workspaceId: scope.workspaceId, userId, role })
     .onConflictDoNothing()
     .returning({ userId: memberships.userId });
   return rows.length === 1;
@@ -80,37 +80,33 @@ export async function insertMember(
  * Until the transaction ends nobody else changes the members of the workspace, so that two owners
  * cannot demote each other at once.
  */
-export async function lockMembers(transaction: Transaction, actor: WorkspaceActor): Promise<void> {
+export async function lockMembers(transaction: Transaction, scope: Scope): Promise<void> {
   await transaction.execute(
-    sql`select 1 from ${workspaces} where ${workspaces.id} = ${actor.workspaceId} for update`,
+    sql`select 1 from ${workspaces} where ${workspaces.id} = ${scope.workspaceId} for update`,
   );
 }
 
-export async function countOwners(db: Queryable, actor: WorkspaceActor): Promise<number> {
+export async function countOwners(db: Queryable, scope: Scope): Promise<number> {
   return db.$count(
     memberships,
-    and(eq(memberships.workspaceId, actor.workspaceId), eq(memberships.role, 'owner')),
+    and(eq(memberships.workspaceId, scope.workspaceId), eq(memberships.role, 'owner')),
   );
 }
 
 export async function updateRole(
   db: Queryable,
-  actor: WorkspaceActor,
+  scope: Scope,
   userId: string,
   role: Role,
 ): Promise<void> {
   await db
     .update(memberships)
     .set({ role })
-    .where(and(eq(memberships.workspaceId, actor.workspaceId), eq(memberships.userId, userId)));
+    .where(and(eq(memberships.workspaceId, scope.workspaceId), eq(memberships.userId, userId)));
 }
 
-export async function deleteMember(
-  db: Queryable,
-  actor: WorkspaceActor,
-  userId: string,
-): Promise<void> {
+export async function deleteMember(db: Queryable, scope: Scope, userId: string): Promise<void> {
   await db
     .delete(memberships)
-    .where(and(eq(memberships.workspaceId, actor.workspaceId), eq(memberships.userId, userId)));
+    .where(and(eq(memberships.workspaceId, scope.workspaceId), eq(memberships.userId, userId)));
 }

@@ -2,7 +2,7 @@ import { and, eq } from 'drizzle-orm';
 import type { Queryable } from '../client';
 import { memberships } from '../schema/memberships';
 import { workspaces } from '../schema/workspaces';
-import type { WorkspaceActor } from './workspaceActor';
+import type { Scope } from './scope';
 
 export type WorkspaceRow = typeof workspaces.$inferSelect;
 
@@ -19,15 +19,12 @@ export async function insertOwnedWorkspace(
   return row;
 }
 
-/** @returns the workspace if the actor is a member of it, else null. */
-export async function findWorkspace(
-  db: Queryable,
-  actor: WorkspaceActor,
-): Promise<WorkspaceRow | null> {
+/** @returns the workspace if the person is a member of it, else null. */
+export async function findWorkspace(db: Queryable, scope: Scope): Promise<WorkspaceRow | null> {
   const rows = await db
     .select({ id: workspaces.id, name: workspaces.name, createdAt: workspaces.createdAt })
     .from(workspaces)
     .innerJoin(memberships, eq(memberships.workspaceId, workspaces.id))
-    .where(and(eq(workspaces.id, actor.workspaceId), eq(memberships.userId, actor.userId)));
+    .where(and(eq(workspaces.id, scope.workspaceId), eq(memberships.userId, scope.userId)));
   return rows[0] ?? null;
 }

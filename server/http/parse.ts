@@ -34,7 +34,7 @@ export function parseQuery(schema: z.ZodType | undefined, query: unknown): unkno
   });
 }
 
-export function parseBody(schema: z.ZodType, body: unknown): unknown {
+export function parseBody<S extends z.ZodType>(schema: S, body: unknown): z.output<S> {
   refuseWrongText(body);
   const parsed = schema.safeParse(body);
   if (parsed.success) return parsed.data;
@@ -97,6 +97,7 @@ function refuseWrongText(body: unknown): void {
 /** @returns what is wrong with the text, or null. */
 export function wrongText(value: string): string | null {
   if (value.includes('\u0000')) return 'It holds a NUL character; take it out.';
-  if (/\p{Surrogate}/u.test(value)) return 'It holds half of a surrogate pair; write the character again.';
+  if (/\p{Surrogate}/u.test(value))
+    return 'It holds half of a surrogate pair; write the character again.';
   return null;
 }

@@ -1,0 +1,59 @@
+import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
+import { z } from 'zod';
+import { createDatasetFields } from '#contract/datasets';
+import { decodeEdges, findRevision, listNodes } from '../../db/repositories/revisions';
+import type { Dependencies } from '../dependencies';
+import { notFound, parseBody } from '../http/parse';
+import { created, ok, route, SENT, type RouteMap } from '../http/route';
+import { presentDataset, presentRevision } from './presenter';
+import { withUpload } from './upload';
+import { createDataset, createRevision, datasetOf, datasetsOf } from './usecases';
+
+const oneDataset = z.strictObject({ workspaceId: z.uuid(), datasetId: z.uuid() });
+const oneRevision = z.strictObject({ workspaceId: z.uuid(), revisionId: z.uuid() });
+const noFields = z.strictObject({});
+
+type DatasetRoutes = Pick<
+  RouteMap,
+  'datasets' | 'createDataset' | 'dataset' | 'createRevision' | 'revision'
+>;
+
+export function datasetRoutes({ database: { db }, reader }: Dependencies): DatasetRoutes {
+  return {
+    datasets: route('datasets', {}, async ({ member }) =>
+      ok({ datasets: (await datasetsOf(db, member)).map(presentDataset) }),
+    ),
+    dataset: route('dataset', { params: oneDataset }, async ({ member, params }) =>
+      ok(presentDataset(await datasetOf(db, member, params.datasetId))),
+    ),
+    createDataset: route('createDataset', { body: 'multipart' }, ({ member, request }) =>
+      withUpload(request, async (upload) => {
+        const fields = parseBody(createDatasetFields, upload.fields);
+        const id = await createDataset(db, member, fields, await reader.read(upload));
+        return created(presentDataset(await datasetOf(db, member, id)));
+      }),
+    ),
+    createRevision: route(
+      'createRevision',
+      { params: oneDataset, body: 'multipart' },
+      async ({ member, params, request }) => {
+        await datasetOf(db, member, params.datasetId);
+        return withUpload(request, async (upload) => {
+          parseBody(noFields, upload.fields);
+          await createRevision(db, member, params.datasetId, await reader.read(upload));
+          return created(presentDataset(await datasetOf(db, member, params.datasetId)));
+        });
+      },
+    ),
+    revision: route('revision', { params: oneRevision }, async (input) => {
+      const { member, params, response } = input;
+      const row = await findRevision(db, member, params.revisionId);
+      if (row === null) throw notFound('revisions');
+      const nodes = await listNodes(db, member, params.revisionId);
+      response.status(200).type('application/json').setHeader('Cache-Control', 'no-store');
+      await pipeline(Readable.from(presentRevision(row, nodes, decodeEdges(row.edges))), response);
+      return SENT;
+    }),
+  };
+}

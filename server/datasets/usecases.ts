@@ -1,0 +1,120 @@
+import type { CreateDatasetFields } from '#contract/datasets';
+import type { Db, Transaction } from '../../db/client';
+import {
+  findDataset,
+  insertDataset,
+  listDatasets,
+  listRunBriefs,
+  lockDataset,
+  type DatasetRow,
+  type RunBriefRow,
+} from '../../db/repositories/datasets';
+import {
+  findLatestRevision,
+  insertRevision,
+  listRevisions,
+  type RevisionSummaryRow,
+} from '../../db/repositories/revisions';
+import type { Scope } from '../../db/repositories/scope';
+import { notFound } from '../http/parse';
+import { sameContent } from './errors';
+import type { ReadNetwork } from './readMessages';
+
+export interface DatasetWithHistory {
+  readonly dataset: DatasetRow;
+  readonly revisions: readonly RevisionSummaryRow[];
+  readonly runs: readonly RunBriefRow[];
+}
+
+/** Saves a network as a new dataset with revision 1: all of it or nothing. @returns its id */
+export async function createDataset(
+  db: Db,
+  scope: Scope,
+  fields: CreateDatasetFields & { readonly invented?: boolean },
+  network: ReadNetwork,
+): Promise<string> {
+  return db.transaction(async (transaction) => {
+    const dataset = await insertDataset(transaction, scope, fields);
+    await saveRevision(transaction, scope, dataset.id, 1, network);
+    return dataset.id;
+  });
+}
+
+/** Saves a network as the next revision. @throws Failure `revisions.same_content` */
+export async function createRevision(
+  db: Db,
+  scope: Scope,
+  datasetId: string,
+  network: ReadNetwork,
+): Promise<void> {
+  await db.transaction(async (transaction) => {
+    if ((await lockDataset(transaction, scope, datasetId)) === null) throw notFound('datasets');
+    const latest = await findLatestRevision(transaction, scope, datasetId);
+    if (latest?.contentHash === network.contentHash) throw sameContent(latest.number);
+    await saveRevision(transaction, scope, datasetId, (latest?.number ?? 0) + 1, network);
+  });
+}
+
+function saveRevision(
+  transaction: Transaction,
+  scope: Scope,
+  datasetId: string,
+  number: number,
+  network: ReadNetwork,
+): Promise<string> {
+  const { nodes, edges, contentHash, entryUnit, report } = network;
+  return insertRevision(transaction, scope, {
+    datasetId,
+    number,
+    nodes,
+    edges,
+    contentHash,
+    entryUnit,
+    report,
+  });
+}
+
+export async function datasetsOf(db: Db, scope: Scope): Promise<DatasetWithHistory[]> {
+  return withHistory(db, scope, await listDatasets(db, scope));
+}
+
+/** @throws Failure `datasets.not_found` */
+export async function datasetOf(
+  db: Db,
+  scope: Scope,
+  datasetId: string,
+): Promise<DatasetWithHistory> {
+  const row = await findDataset(db, scope, datasetId);
+  const [dataset] = row === null ? [] : await withHistory(db, scope, [row]);
+  if (dataset === undefined) throw notFound('datasets');
+  return dataset;
+}
+
+async function withHistory(
+  db: Db,
+  scope: Scope,
+  datasets: readonly DatasetRow[],
+): Promise<DatasetWithHistory[]> {
+  const ids = datasets.map(({ id }) => id);
+  const [revisions, runs] = await Promise.all([
+    listRevisions(db, scope, ids),
+    listRunBriefs(db, scope, ids),
+  ]);
+  const revisionsOf = byDataset(revisions);
+  const runsOf = byDataset(runs);
+  return datasets.map((dataset) => ({
+    dataset,
+    revisions: revisionsOf.get(dataset.id) ?? [],
+    runs: runsOf.get(dataset.id) ?? [],
+  }));
+}
+
+function byDataset<T extends { readonly datasetId: string }>(rows: readonly T[]): Map<string, T[]> {
+  const groups = new Map<string, T[]>();
+  for (const row of rows) {
+    const group = groups.get(row.datasetId);
+    if (group) group.push(row);
+    else groups.set(row.datasetId, [row]);
+  }
+  return groups;
+}
