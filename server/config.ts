@@ -37,7 +37,7 @@ const environment = z.object({
   /** Folder of the built browser application; without it only the API is served. */
   HEDDLE_SPA_DIR: z.preprocess(filled, text.optional()),
   /** The built script of the thread that reads uploads. */
-  HEDDLE_PARSE_THREAD: z.preprocess(filled, text.default('dist/parseThread.mjs')),
+  HEDDLE_PARSE_THREAD: z.preprocess(filled, text.default('dist/parseThread.js')),
   /** Least severe line that is logged. */
   LOG_LEVEL: z.preprocess(
     filled,

@@ -1,13 +1,26 @@
 import { openDatabase } from '../db/client';
 import { makePasswords } from './auth/passwords';
 import { ConfigurationError, readConfig } from './config';
+import { DEMO_ACCOUNTS } from './demo/accounts';
 import { seedDemo, type SeedOutcome } from './demo/seedDemo';
 
 const SAID: Readonly<Record<SeedOutcome, string>> = {
-  made: 'The demo workspace is made; a worker will finish its run.',
+  made: 'The demo workspace is made; a worker finishes its run.',
   present: 'The demo workspace is there already.',
   foreign: 'This instance has accounts of its own, so no demo was made.',
 };
+
+/** The accounts by role, for the person who started the demo instance. */
+function accountLines(): string[] {
+  const byRole = Map.groupBy(DEMO_ACCOUNTS, ({ role }) => role);
+  const passwords = [...new Set(DEMO_ACCOUNTS.map(({ password }) => password))];
+  return [
+    `Demo accounts (invented people); the password of each is: ${passwords.join(', ')}`,
+    ...[...byRole].map(
+      ([role, people]) => `  ${role.padEnd(9)} ${people.map(({ email }) => email).join('  ')}`,
+    ),
+  ];
+}
 
 async function main(): Promise<void> {
   const config = readConfig();
@@ -22,7 +35,9 @@ async function main(): Promise<void> {
     onError: (error) => process.stderr.write(`${error.message}\n`),
   });
   try {
-    process.stdout.write(`${SAID[await seedDemo(database.db, makePasswords())]}\n`);
+    const outcome = await seedDemo(database.db, makePasswords());
+    const lines = [SAID[outcome], ...(outcome === 'foreign' ? [] : accountLines())];
+    process.stdout.write(`${lines.join('\n')}\n`);
   } finally {
     await database.close();
   }

@@ -1,7 +1,7 @@
 import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm';
 import type { EntryUnit } from '#contract/enums';
 import type { Queryable } from '../client';
-import { decodeArrays, encodeArrays } from '../codecs/typedArrays';
+import { encodeUint32 } from '../codecs/typedArrays';
 import { datasets } from '../schema/datasets';
 import { revisionNodes } from '../schema/revisionNodes';
 import { revisions } from '../schema/revisions';
@@ -59,7 +59,7 @@ export async function insertRevision(
       createdBy: scope.userId,
       nodeCount: nodes.length,
       edgeCount: edges.length / 2,
-      edges: encodeArrays([edges]),
+      edges: encodeUint32(edges),
     })
     .returning({ id: revisions.id });
   const id = rows[0]?.id;
@@ -136,15 +136,6 @@ export async function findRevision(db: Queryable, scope: Scope, revisionId: stri
   return rows[0] ?? null;
 }
 export type RevisionRow = NonNullable<Awaited<ReturnType<typeof findRevision>>>;
-
-/** @returns u32[2 m], as in NewRevision. @throws RangeError if the stored bytes hold no edges. */
-export function decodeEdges(stored: Uint8Array): Uint32Array {
-  const [edges, ...others] = decodeArrays(stored);
-  if (!(edges instanceof Uint32Array) || others.length > 0) {
-    throw new RangeError('Stored arrays: the edges of a revision were expected.');
-  }
-  return edges;
-}
 
 /** The nodes of a revision in the order of the uploaded file. */
 export async function listNodes(db: Queryable, scope: Scope, revisionId: string) {

@@ -2,7 +2,8 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { z } from 'zod';
 import { createDatasetFields } from '#contract/datasets';
-import { decodeEdges, findRevision, listNodes } from '../../db/repositories/revisions';
+import { decodeUint32 } from '../../db/codecs/typedArrays';
+import { findRevision, listNodes } from '../../db/repositories/revisions';
 import type { Dependencies } from '../dependencies';
 import { notFound, parseBody } from '../http/parse';
 import { created, ok, route, SENT, type RouteMap } from '../http/route';
@@ -52,7 +53,7 @@ export function datasetRoutes({ database: { db }, reader }: Dependencies): Datas
       if (row === null) throw notFound('revisions');
       const nodes = await listNodes(db, member, params.revisionId);
       response.status(200).type('application/json').setHeader('Cache-Control', 'no-store');
-      await pipeline(Readable.from(presentRevision(row, nodes, decodeEdges(row.edges))), response);
+      await pipeline(Readable.from(presentRevision(row, nodes, decodeUint32(row.edges))), response);
       return SENT;
     }),
   };

@@ -1,11 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { RequestHandler } from 'express';
-import { pino, type Logger } from 'pino';
+import type { Logger } from 'pino';
 import { pinoHttp } from 'pino-http';
-
-export function makeLogger(level: string): Logger {
-  return pino({ level, base: null, timestamp: pino.stdTimeFunctions.isoTime });
-}
 
 /** Gives each request an id of its own, tells it to the client and logs one line when it ends. */
 export function requestLog(logger: Logger): RequestHandler {
