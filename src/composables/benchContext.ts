@@ -18,6 +18,7 @@ import { safePairs } from '../graphs/swapSafeGraph';
 import { useBenchGroupsStore } from '../stores/benchGroups';
 import { useBenchRunStore } from '../stores/benchRun';
 import { useBenchCommunities } from './benchCommunities';
+import { useBenchDetail } from './benchDetail';
 import { useBenchInks } from './benchInks';
 import type { BenchNetwork } from './benchNetwork';
 import { useBenchView } from './benchView';
@@ -104,6 +105,13 @@ function makeBench(subject: BenchSubject) {
       }
     }
   });
+
+  useBenchDetail(
+    { workspaceId: subject.workspaceId, runId: run().id },
+    matrix,
+    network.filtration.order,
+    () => view.value.pair,
+  );
 
   const label = (p: number): string => network.labels[p] ?? '';
   const bound = ({ p, q }: Pair): number => (values[q] ?? 0) - (values[p] ?? 0);

@@ -47,5 +47,9 @@ export function dimensionNoun(dimension: number, count = 2): string {
 
 const SUBSCRIPTS = ['₀', '₁', '₂', '₃'];
 
+/** "1 · loops"; dimension 3 has no shorter name than its number. */
+export const dimensionName = (dimension: number): string =>
+  dimension > 2 ? String(dimension) : `${dimension} · ${dimensionNoun(dimension)}`;
+
 export const dimensionTitle = (dimension: number): string =>
-  `H${SUBSCRIPTS[dimension] ?? dimension} · ${dimensionNoun(dimension)}`;
+  `H${SUBSCRIPTS[dimension] ?? dimension}${dimension > 2 ? '' : ` · ${dimensionNoun(dimension)}`}`;

@@ -134,15 +134,31 @@ function drawMoved(
   const first = Math.min(...ends) - 8;
   const last = Math.max(...ends) + 8;
   const room = words.length * LETTER;
-  const before = first - room > axis.left || first - axis.left > axis.right - last;
+  const place = wordPlace(axis, first, last, room);
   g.append('text')
-    .attr('x', before ? first : last)
+    .attr('x', place.x)
+    .attr('text-anchor', place.anchor)
+    .attr('stroke', inks.ground)
+    .attr('stroke-width', 4)
+    .attr('stroke-linejoin', 'round')
+    .attr('paint-order', 'stroke')
     .attr('y', row.y + 4)
-    .attr('text-anchor', before ? 'end' : 'start')
     .attr('font-size', 11)
     .attr('font-weight', row.realising ? 650 : 500)
     .attr('fill', inks.madder)
     .text(words);
+}
+
+/** Words stand before a bar if there is room, else behind it, else over it from the left edge. */
+function wordPlace(
+  axis: ArrivalAxis,
+  first: number,
+  last: number,
+  room: number,
+): { readonly x: number; readonly anchor: 'start' | 'end' } {
+  if (first - room >= axis.left) return { x: first, anchor: 'end' };
+  if (last + room <= axis.right) return { x: last, anchor: 'start' };
+  return { x: axis.left, anchor: 'start' };
 }
 
 /** Dotted joints between the ends that moved; a bar of one side only is joined to its own middle. */

@@ -120,5 +120,11 @@ function drawBand(node: SVGGElement | null, band: BettiBand, top: number, scene:
       );
     }
   }
-  write(String(most), axis.right, top + 13, 'end', inks.quiet);
+  write(
+    `most ${Math.max(0, ...before.counts, ...(after?.counts ?? []))}`,
+    axis.right,
+    top + 13,
+    'end',
+    inks.quiet,
+  );
 }

@@ -19,18 +19,21 @@ export function clothPencil(element: HTMLElement): ClothPencil {
   const group = svg.append('path').attr('class', 'group').attr('fill', 'none');
   const mark = (name: string) => {
     const g = svg.append('g').attr('class', name).attr('fill', 'none');
-    return { g, arc: g.append('path'), cell: g.append('path'), feet: g.append('path') };
+    const halo = g.append('path');
+    return { g, halo, arc: g.append('path'), cell: g.append('path'), feet: g.append('path') };
   };
   const chosen = mark('chosen');
   const cursor = mark('cursor');
   let shown: { cloth: ClothGeometry; inks: Inks } | null = null;
 
-  const put = ({ g, arc, cell, feet }: typeof chosen, pair: Pair | null): void => {
+  const put = ({ g, halo, arc, cell, feet }: typeof chosen, pair: Pair | null): void => {
     g.attr('display', pair === null || shown === null ? 'none' : null);
     if (pair === null || shown === null) return;
     const { cloth } = shown;
     arc.attr('d', arcPath(cloth, pair));
-    cell.attr('d', lozengePath(cloth, pair, Math.max(1, 4 - cloth.axis.step / 4)));
+    const lozenge = lozengePath(cloth, pair, Math.max(1, 4 - cloth.axis.step / 4));
+    cell.attr('d', lozenge);
+    halo.attr('d', lozenge);
     const foot = (x: number): string => `M${x} ${cloth.base - 5}V${cloth.base}`;
     feet.attr('d', foot(xAt(cloth.axis, pair.p)) + foot(xAt(cloth.axis, pair.q)));
   };
@@ -47,6 +50,9 @@ export function clothPencil(element: HTMLElement): ClothPencil {
       cursor.arc.attr('stroke-width', 1.25).attr('stroke-dasharray', '4 3');
       cursor.cell.attr('stroke-width', 2);
       cursor.feet.attr('stroke-width', 3);
+      for (const { halo } of [chosen, cursor]) {
+        halo.attr('stroke', inks.cloth).attr('stroke-width', 4.5);
+      }
       group.attr('stroke', inks.woad).attr('stroke-width', 1.5);
       group.attr('d', groupPath(cloth, members));
       put(chosen, selection);

@@ -41,7 +41,7 @@ export interface NameEvents {
 }
 
 const TICK = 6;
-const NAME_ROOM = 118;
+const NAME_ROOM = 128;
 const RULER = 18;
 /** A drag shorter than this (pixels) is a click. */
 const DRAG = 6;
@@ -96,17 +96,13 @@ export function drawNames(element: HTMLElement, events: NameEvents): Drawing<Nam
     )) {
       base
         .append('path')
-        .attr('d', `M${mark.x} ${height - RULER}v4`)
+        .attr('d', `M${mark.x} ${height - RULER}v14`)
         .attr('stroke', inks.edge);
       base
         .append('text')
-        .attr('x', mark.x)
-        .attr('y', height - 3)
+        .attr('x', mark.x + 4)
+        .attr('y', height - 5)
         .attr('font-size', 11)
-        .attr(
-          'text-anchor',
-          mark.x > axis.right - 40 ? 'end' : mark.x < axis.left + 20 ? 'start' : 'middle',
-        )
         .attr('fill', inks.quiet)
         .text(mark.text);
     }

@@ -33,9 +33,12 @@ export interface RulerMark {
 export function rulerMarks(axis: ArrivalAxis, raw: readonly string[]): RulerMark[] {
   const { first, last } = visiblePositions(axis);
   const longest = Math.max(2, ...raw.map((text) => text.length));
-  const room = Math.min(130, longest * 6.5 + 18);
-  const every = Math.max(1, Math.ceil(room / axis.step));
+  const text = Math.min(120, longest * 6.5);
+  const every = Math.max(1, Math.ceil((text + 16) / axis.step));
   const marks: RulerMark[] = [];
-  for (let p = first; p <= last; p += every) marks.push({ x: xAt(axis, p), text: raw[p] ?? '' });
+  for (let p = first; p <= last; p += every) {
+    const x = xAt(axis, p);
+    if (x + text <= axis.width) marks.push({ x, text: raw[p] ?? '' });
+  }
   return marks;
 }

@@ -7,7 +7,9 @@ export default defineRouter(() => {
   const router = createRouter({
     history: createWebHistory('/'),
     routes,
-    scrollBehavior: (to, _from, saved) => saved ?? (to.hash ? { el: to.hash } : { top: 0 }),
+    // A change of the query alone (a selection on the bench) leaves the page where it is.
+    scrollBehavior: (to, from, saved) =>
+      to.path === from.path ? false : (saved ?? (to.hash ? { el: to.hash } : { top: 0 })),
   });
   router.beforeEach(guard);
   return router;
