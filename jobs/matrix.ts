@@ -1,5 +1,5 @@
 import { EngineInputError, EngineLimitError } from './engine/types';
-import { computeMatrix, WrongFiles } from './matrix/command';
+import { computeMatrix, FileTrouble, WrongFiles } from './matrix/command';
 import { readOptions, USAGE, UsageError } from './matrix/options';
 
 /** Exit status: 0 done, 1 wrong input or a limit passed, 2 called wrongly. */
@@ -21,24 +21,8 @@ function progressLine(): (done: number, total: number) => void {
   };
 }
 
-/** The plain sentence for an error that a person can do something about; null for a fault of ours. */
-function sentenceOf(error: unknown): string | null {
-  if (error instanceof WrongFiles || error instanceof EngineLimitError) return error.message;
-  if (error instanceof EngineInputError || error instanceof UsageError) return error.message;
-  if (!(error instanceof Error) || !('code' in error) || !('path' in error)) return null;
-  const path = String(error.path).replace(/\.\d+\.part$/, '');
-  switch (error.code) {
-    case 'ENOENT':
-      return `There is no file or folder ${path}; check the path.`;
-    case 'EISDIR':
-      return `${path} is a folder; name a file.`;
-    case 'EACCES':
-    case 'EPERM':
-      return `${path} may not be opened by this user; change its permissions or choose another.`;
-    default:
-      return `${path} cannot be read or written (${String(error.code)}).`;
-  }
-}
+/** Errors that a person can do something about; any other is a fault of ours. */
+const PLAIN = [WrongFiles, FileTrouble, EngineLimitError, EngineInputError, UsageError];
 
 function report(error: unknown): void {
   if (error instanceof WrongFiles) {
@@ -48,8 +32,9 @@ function report(error: unknown): void {
     }
     if (error.leftOut > 0) process.stderr.write(`and ${error.leftOut} more.\n`);
   }
-  const stack = error instanceof Error ? error.stack : String(error);
-  process.stderr.write(`${sentenceOf(error) ?? `This is a fault of Heddle: ${stack}`}\n`);
+  const { message, stack } = error instanceof Error ? error : new Error(String(error));
+  const plain = PLAIN.some((kind) => error instanceof kind);
+  process.stderr.write(`${plain ? message : `This is a fault of Heddle: ${stack}`}\n`);
   process.exitCode = error instanceof UsageError ? WRONG_CALL : WRONG_INPUT;
 }
 

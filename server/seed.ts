@@ -1,3 +1,4 @@
+import { ROLES, type Role } from '#contract/enums';
 import { openDatabase } from '../db/client';
 import { makePasswords } from './auth/passwords';
 import { ConfigurationError, readConfig } from './config';
@@ -12,13 +13,12 @@ const SAID: Readonly<Record<SeedOutcome, string>> = {
 
 /** The accounts by role, for the person who started the demo instance. */
 function accountLines(): string[] {
-  const byRole = Map.groupBy(DEMO_ACCOUNTS, ({ role }) => role);
   const passwords = [...new Set(DEMO_ACCOUNTS.map(({ password }) => password))];
+  const emailsOf = (wanted: Role) =>
+    DEMO_ACCOUNTS.filter(({ role }) => role === wanted).map(({ email }) => email);
   return [
     `Demo accounts (invented people); the password of each is: ${passwords.join(', ')}`,
-    ...[...byRole].map(
-      ([role, people]) => `  ${role.padEnd(9)} ${people.map(({ email }) => email).join('  ')}`,
-    ),
+    ...ROLES.map((role) => `  ${role.padEnd(9)} ${emailsOf(role).join('  ')}`),
   ];
 }
 

@@ -62,7 +62,7 @@ export interface Surroundings {
 
 /**
  * Reads the two files, computes the swap matrix, writes what was asked for.
- * @throws WrongFiles; EngineInputError; EngineLimitError; errors of the file system with their path
+ * @throws WrongFiles; FileTrouble; EngineInputError; EngineLimitError
  */
 export async function computeMatrix(
   options: MatrixOptions,
@@ -98,12 +98,52 @@ export async function computeMatrix(
 
 async function readFiles({ nodes, edges }: MatrixOptions): Promise<ReadNetwork> {
   const outcome = await readNetwork(
-    { name: nodes, bytes: createReadStream(nodes) },
-    { name: edges, bytes: createReadStream(edges) },
+    { name: nodes, bytes: bytesOf(nodes) },
+    { name: edges, bytes: bytesOf(edges) },
     FILE_LIMITS,
   );
   if (!outcome.ok) throw new WrongFiles(outcome.issues, outcome.leftOut);
   return outcome;
+}
+
+/** A file that cannot be read or written; the message says which and what to do. */
+export class FileTrouble extends Error {
+  override readonly name = 'FileTrouble';
+  constructor(path: string, cause: unknown) {
+    super(troubleWith(path, codeOf(cause)), { cause });
+  }
+}
+
+const codeOf = (error: unknown): string =>
+  error instanceof Error && 'code' in error ? String(error.code) : '';
+
+/** Whether the system refused: its codes are names like ENOENT, Node's own begin with ERR_. */
+const isTrouble = (error: unknown): boolean => /^E[A-Z]+$/.test(codeOf(error));
+
+function troubleWith(path: string, code: string): string {
+  switch (code) {
+    case 'ENOENT':
+      return `There is no file or folder ${path}; check the path.`;
+    case 'EISDIR':
+      return `${path} is a folder; name a file.`;
+    case 'EACCES':
+    case 'EPERM':
+      return `${path} may not be opened by this user; change its permissions or name another file.`;
+    case 'ENOSPC':
+    case 'EDQUOT':
+      return `There is no room left to write ${path}; make room or name a file elsewhere.`;
+    default:
+      return `${path} cannot be read or written (${code}).`;
+  }
+}
+
+/** The bytes of a file that is opened when its first byte is asked for. @throws FileTrouble */
+async function* bytesOf(path: string): AsyncGenerator<Uint8Array> {
+  try {
+    yield* createReadStream(path);
+  } catch (error) {
+    throw isTrouble(error) ? new FileTrouble(path, error) : error;
+  }
 }
 
 const silent: Control = { shouldStop: () => false, onProgress: () => undefined };
@@ -157,6 +197,6 @@ async function writeCsv(
     await rename(partial, path);
   } catch (error) {
     await rm(partial, { force: true });
-    throw error;
+    throw isTrouble(error) ? new FileTrouble(path, error) : error;
   }
 }
