@@ -1,5 +1,6 @@
 import { createHash, randomBytes } from 'node:crypto';
 import { DrizzlePostgreSQLAdapter } from '@lucia-auth/adapter-drizzle';
+import { serializeCookie } from 'oslo/cookie';
 import { Lucia, TimeSpan, type Adapter, type DatabaseSession } from 'lucia';
 import type { Db } from '../../db/client';
 import { deleteEndedSessions } from '../../db/repositories/sessions';
@@ -91,7 +92,9 @@ export function makeSessions(db: Db, secure: boolean): Sessions {
     start: async (userId) => {
       const sessionId = randomBytes(SECRET_BYTES).toString('base64url');
       await lucia.createSession(userId, { createdAt: new Date() }, { sessionId });
-      return lucia.createSessionCookie(sessionId).serialize();
+      const { name, value, attributes } = lucia.createSessionCookie(sessionId);
+      // The browser may keep it as long as the session can last; the table decides.
+      return serializeCookie(name, value, { ...attributes, maxAge: ABSOLUTE_LIMIT / 1000 });
     },
     actorOf,
     end: async (cookieHeader) => {

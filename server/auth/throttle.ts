@@ -36,16 +36,18 @@ export interface Throttle {
 /**
  * Counts in Redis where there is one, so that every process counts together; while Redis is away,
  * and without one, each process counts in its own memory.
+ * @param prefix first part of every key in Redis
  */
 export function makeThrottle(
   redisUrl: string | null,
   log: Logger,
   limits: ThrottleLimits = THROTTLE_LIMITS,
+  prefix = 'heddle',
 ): Throttle {
   const redis = redisUrl === null ? null : connect(redisUrl, log);
-  const account = makeLimiter(redis, 'sign-in-account', limits.account);
-  const address = makeLimiter(redis, 'sign-in-address', limits.address);
-  const signUp = makeLimiter(redis, 'sign-up-address', limits.signUp);
+  const account = makeLimiter(redis, `${prefix}-sign-in-account`, limits.account);
+  const address = makeLimiter(redis, `${prefix}-sign-in-address`, limits.address);
+  const signUp = makeLimiter(redis, `${prefix}-sign-up-address`, limits.signUp);
   return {
     beforeSignIn: async (email, from) => {
       const code = 'session.too_many_attempts';
@@ -57,7 +59,7 @@ export function makeThrottle(
     },
     beforeSignUp: (from) =>
       consume(signUp, from, 'accounts.too_many', 'make an account from this address'),
-    close: async () => {
+    close: () => {
       redis?.disconnect();
       return Promise.resolve();
     },
@@ -84,7 +86,7 @@ function makeLimiter(
   name: string,
   limit: { readonly points: number; readonly duration: number },
 ): RateLimiterAbstract {
-  const options = { ...limit, keyPrefix: `heddle-${name}` };
+  const options = { ...limit, keyPrefix: name };
   const inMemory = new RateLimiterMemory(options);
   if (redis === null) return inMemory;
   return new RateLimiterRedis({

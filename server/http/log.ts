@@ -12,8 +12,8 @@ export function requestLog(logger: Logger): RequestHandler {
       response.setHeader('X-Request-Id', id);
       return id;
     },
-    customLogLevel: (_request, response, error) =>
-      response.statusCode >= 500 || error ? 'error' : 'debug',
+    // What went wrong is logged once, by the error handler; this is the line that the request ended.
+    customLogLevel: () => 'debug',
     serializers: {
       // Cookies, passwords and addresses of people stay out of the log.
       req: (request: { id: unknown; method: unknown; url: unknown }) => ({

@@ -65,8 +65,10 @@ export function failureOf(error: unknown): Failure | null {
 /** The only place that turns an error into an answer: application/problem+json (RFC 9457). */
 export const answerProblem: ErrorRequestHandler = (error: unknown, request, response, _next) => {
   const failure = failureOf(error);
-  if (failure === null || failure.kind === 'unavailable') {
-    request.log.error({ err: error }, 'request failed');
+  if (failure === null) request.log.error({ err: error }, 'request failed');
+  else if (failure.kind === 'unavailable') {
+    const { code, detail, cause } = failure;
+    request.log.warn({ code, cause }, detail);
   }
   if (response.headersSent) {
     response.destroy();

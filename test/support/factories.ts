@@ -1,0 +1,180 @@
+import { randomUUID } from 'node:crypto';
+import type { Role } from '../../server/contract/enums';
+import { encodeBarcode } from '../../db/codecs/barcode';
+import { encodeBlockResult } from '../../db/codecs/blockResult';
+import { encodeUint32 } from '../../db/codecs/typedArrays';
+import { insertGroup } from '../../db/repositories/groups';
+import { insertMember } from '../../db/repositories/memberships';
+import { listRevisions } from '../../db/repositories/revisions';
+import type { Scope } from '../../db/repositories/scope';
+import { insertUser } from '../../db/repositories/users';
+import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
+import { pairDetails, runBlocks, runs } from '../../db/schema/index';
+import { createDataset } from '../../server/datasets/usecases';
+import type { ReadNetwork } from '../../server/datasets/readMessages';
+import type { TestDatabase } from './database';
+
+type Db = TestDatabase['db'];
+export interface Person {
+  readonly id: string;
+  readonly name: string;
+  readonly email: string;
+}
+
+/** An account nobody can sign in to by password: sessions are made beside it. */
+export async function makePerson(db: Db, name = 'Wren Tarn'): Promise<Person> {
+  const email = `${randomUUID()}@example.org`;
+  const row = await insertUser(db, { name, email, passwordHash: '-' });
+  if (row === null) throw new Error('The address was taken.');
+  return row;
+}
+
+export interface MadeWorkspace {
+  readonly id: string;
+  readonly owner: Person;
+  readonly scope: Scope;
+}
+
+export async function makeWorkspace(db: Db, name = 'Fen'): Promise<MadeWorkspace> {
+  const owner = await makePerson(db, `Owner of ${name}`);
+  const { id } = await insertOwnedWorkspace(db, name, owner.id);
+  return { id, owner, scope: { userId: owner.id, workspaceId: id } };
+}
+
+export async function makeMember(db: Db, scope: Scope, role: Role): Promise<Person> {
+  const person = await makePerson(db, `The ${role}`);
+  await insertMember(db, scope, person.id, role);
+  return person;
+}
+
+/** Three nodes a, b, c that arrive at 1, 2, 3 and the path a – b – c; invented. */
+export const PATH_OF_THREE: ReadNetwork = {
+  nodes: ['a', 'b', 'c'].map((id, row) => ({
+    id,
+    label: `Node ${id}`,
+    entryRaw: String(row + 1),
+    entry: row + 1,
+    earliestRaw: '',
+    earliest: null,
+    latestRaw: '',
+    latest: null,
+  })),
+  edges: Uint32Array.of(0, 1, 1, 2),
+  entryUnit: 'number',
+  contentHash: 'f'.repeat(64),
+  report: {
+    nodeRows: 3,
+    edgeRows: 2,
+    selfLoops: 0,
+    duplicateEdges: 0,
+    reversedEdges: 0,
+    tiedNodes: 0,
+    repeatedLabels: 0,
+    isolatedNodes: 0,
+    components: 1,
+    ignoredColumns: [],
+  },
+};
+
+export async function makeDataset(db: Db, scope: Scope, name = 'Path of three') {
+  const id = await createDataset(db, scope, { name, description: '' }, PATH_OF_THREE);
+  const [revision] = await listRevisions(db, scope, [id]);
+  if (revision === undefined) throw new Error('The dataset has no revision.');
+  return { id, revisionId: revision.id };
+}
+
+let lastNumber = 0;
+
+/** A run of three nodes that is done, with one block; the swap of the first two was refused. */
+export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
+  const { workspaceId, userId } = scope;
+  const [run] = await db
+    .insert(runs)
+    .values({
+      workspaceId,
+      revisionId,
+      number: ++lastNumber,
+      scale: 'entry',
+      dimensions: [0],
+      engineVersion: 'test',
+      state: 'done',
+      attempt: 1,
+      pairsTotal: 3,
+      pairsDone: 3,
+      blockCount: 1,
+      blocksDone: 1,
+      barcode: encodeBarcode([
+        { births: Float64Array.of(1), deaths: Float64Array.of(Number.POSITIVE_INFINITY) },
+      ]),
+      requestedBy: userId,
+      startedAt: new Date(),
+      finishedAt: new Date(),
+    })
+    .returning({ id: runs.id });
+  if (run === undefined) throw new Error('The run was not returned.');
+  await db.insert(runBlocks).values({
+    workspaceId,
+    runId: run.id,
+    block: 0,
+    pairs: 3,
+    rows: encodeUint32(Uint32Array.of(0, 1)),
+    result: encodeBlockResult({ distances: new Float64Array(3), bettiGaps: new Int32Array(3) }),
+    landed: 1,
+    attempt: 1,
+    finishedAt: new Date(),
+  });
+  await db
+    .insert(pairDetails)
+    .values({ workspaceId, runId: run.id, p: 0, q: 1, failure: 'Not part of this test.' });
+  return run.id;
+}
+
+export async function makeQueuedRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
+  const { workspaceId, userId } = scope;
+  const [run] = await db
+    .insert(runs)
+    .values({
+      workspaceId,
+      revisionId,
+      number: ++lastNumber,
+      scale: 'entry',
+      dimensions: [0],
+      pairsTotal: 3,
+      requestedBy: userId,
+    })
+    .returning({ id: runs.id });
+  if (run === undefined) throw new Error('The run was not returned.');
+  return run.id;
+}
+
+export function makeGroup(db: Db, scope: Scope, runId: string): Promise<string> {
+  return insertGroup(db, scope, {
+    runId,
+    name: 'A pair',
+    nodeIds: ['a', 'b'],
+    origin: 'hand',
+    note: '',
+  });
+}
+
+/** A form as the upload page sends it; give null to leave a part out. */
+export function networkForm(
+  parts: {
+    readonly name?: string | null;
+    readonly nodes?: string | Blob | null;
+    readonly edges?: string | Blob | null;
+  } = {},
+): FormData {
+  const { name = 'Path of three', nodes = NODES_CSV, edges = EDGES_CSV } = parts;
+  const form = new FormData();
+  if (name !== null) form.set('name', name);
+  if (nodes !== null) form.set('nodes', blobOf(nodes), 'nodes.csv');
+  if (edges !== null) form.set('edges', blobOf(edges), 'edges.csv');
+  return form;
+}
+
+export const NODES_CSV = 'id,label,entry\na,Node a,1\nb,Node b,2\nc,Node c,3\n';
+export const EDGES_CSV = 'source,target\na,b\nb,c\n';
+
+const blobOf = (content: string | Blob): Blob =>
+  typeof content === 'string' ? new Blob([content], { type: 'text/csv' }) : content;

@@ -1,0 +1,26 @@
+import { randomUUID } from 'node:crypto';
+import { mkdirSync, rmSync } from 'node:fs';
+import { join } from 'node:path';
+import { build } from 'esbuild';
+
+const root = join(import.meta.dirname, '..', '..');
+
+/** Bundles the reading thread's script as it is now, as the build does. */
+export async function buildParseThread(): Promise<{ script: string; remove: () => void }> {
+  const folder = join(root, 'node_modules', '.cache', `heddle-test-${randomUUID()}`);
+  mkdirSync(folder, { recursive: true });
+  const script = join(folder, 'parseThread.mjs');
+  await build({
+    absWorkingDir: root,
+    entryPoints: ['server/datasets/parseThread.ts'],
+    outfile: script,
+    bundle: true,
+    packages: 'external',
+    platform: 'node',
+    format: 'esm',
+    target: 'node20',
+    logLevel: 'error',
+    alias: { '#contract': join(root, 'server', 'contract') },
+  });
+  return { script, remove: () => rmSync(folder, { recursive: true, force: true }) };
+}
