@@ -10,6 +10,7 @@ import {
 import type { Run } from '#contract/runs';
 import type { Amount } from '../drawings/barWords';
 import type { PairEvents } from '../drawings/drawing';
+import { firstPositionAt } from '../graphs/filtration';
 import { measureField, similarityOf, type Measure } from '../graphs/measures';
 import { orderingOf } from '../graphs/ordering';
 import { runSummary } from '../graphs/runSummary';
@@ -116,6 +117,12 @@ function makeBench(subject: BenchSubject) {
   const label = (p: number): string => network.labels[p] ?? '';
   const bound = ({ p, q }: Pair): number => (values[q] ?? 0) - (values[p] ?? 0);
 
+  /** A time of the filtration as a reader knows it: the entry as recorded, or the step. */
+  function moment(value: number): string {
+    if (run().scale === 'rank') return `step ${writeNumber(value)}`;
+    return network.nodes[firstPositionAt(values, value)]?.entryRaw ?? writeNumber(value);
+  }
+
   /** Figures of a pair over all chosen dimensions; null until it has landed. */
   function figuresOf(pair: Pair) {
     if (!matrix.isKnown(pair.p, pair.q)) return null;
@@ -182,6 +189,7 @@ function makeBench(subject: BenchSubject) {
     group,
     label,
     bound,
+    moment,
     figuresOf,
     describe,
     pointers,

@@ -65,12 +65,7 @@ function drawBand(node: SVGGElement | null, band: PlacedBand, scene: BarcodeScen
   if (node === null) return;
   const { inks, axis } = scene;
   const g = select(node);
-  const note =
-    band.rows.length === 0
-      ? ' · none'
-      : band.leftOut > 0
-        ? ` · ${band.leftOut} shorter unchanged bars are in the table`
-        : '';
+  const note = noteOf(band);
   g.append('text')
     .attr('x', axis.left)
     .attr('y', band.top + 13)
@@ -89,6 +84,15 @@ function drawBand(node: SVGGElement | null, band: PlacedBand, scene: BarcodeScen
   for (const row of band.rows) {
     if (row.moved) drawMoved(g.append('g').node(), row, named.has(row), scene);
   }
+}
+
+function noteOf({ rows, leftOut, movedLeftOut }: PlacedBand): string {
+  if (rows.length === 0) return ' · none';
+  const parts = [
+    movedLeftOut > 0 ? `${movedLeftOut} moved bars that cost less` : '',
+    leftOut > 0 ? `${leftOut} shorter unchanged bars` : '',
+  ].filter((part) => part !== '');
+  return parts.length === 0 ? '' : ` · not drawn, in the table: ${parts.join(', ')}`;
 }
 
 function barPath(scene: BarcodeScene, bar: Bar | null, y: number): string {

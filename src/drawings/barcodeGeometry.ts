@@ -31,8 +31,9 @@ export interface PlacedBand {
   readonly band: BarBand;
   readonly top: number;
   readonly rows: readonly PlacedRow[];
-  /** Unchanged bars that were left out of the drawing: the shortest; the table has them. */
+  /** Bars left out of the drawing: the shortest unchanged and the cheapest moved; the table has them. */
   readonly leftOut: number;
+  readonly movedLeftOut: number;
   readonly height: number;
 }
 
@@ -69,7 +70,9 @@ export function swappedBand(detail: PairDetail['dimensions'][number]): BarBand {
 const HEADING = 20;
 const GAP = 8;
 const MOVED_PITCH = 17;
-const SMALL_MOVED_PITCH = 7;
+const SMALL_MOVED_PITCH = 6;
+/** Moved bars of one dimension that are drawn; past it the costliest. */
+export const MOST_MOVED = 80;
 const WIDEST_PITCH = 11;
 const NARROWEST_PITCH = 2;
 /** Height that the unchanged bars of one dimension share. */
@@ -77,7 +80,7 @@ const QUIET_HEIGHT = 110;
 /** Past this many moved bars their words would not be read; only the costliest are named. */
 export const MOST_NAMED = 14;
 
-/** Stacks the bands; every moved bar is drawn, unchanged ones as far as they can be told apart. */
+/** Stacks the bands, with as many bars of each as can be told apart. */
 export function placeBands(bands: readonly BarBand[]): {
   readonly bands: readonly PlacedBand[];
   readonly height: number;
@@ -96,18 +99,20 @@ function placeBand(band: BarBand, top: number): PlacedBand {
   const most = Math.floor(QUIET_HEIGHT / NARROWEST_PITCH);
   const kept = new Set(longest(quiet, most));
   const pitch = Math.min(WIDEST_PITCH, QUIET_HEIGHT / Math.max(1, kept.size));
-  const moved = band.rows.length - quiet.length;
-  const movedPitch = moved > MOST_NAMED ? SMALL_MOVED_PITCH : MOVED_PITCH;
+  const moved = band.rows.filter((row) => row.moved).sort((a, b) => b.cost - a.cost);
+  const keptMoved = new Set(moved.slice(0, MOST_MOVED));
+  const movedPitch = moved.length > MOST_NAMED ? SMALL_MOVED_PITCH : MOVED_PITCH;
   let y = top + HEADING;
   const rows: PlacedRow[] = [];
   for (const row of band.rows) {
-    if (!row.moved && !kept.has(row)) continue;
+    if (!(row.moved ? keptMoved : kept).has(row)) continue;
     const height = row.moved ? movedPitch : pitch;
     rows.push({ ...row, y: y + height / 2, height });
     y += height;
   }
   const leftOut = quiet.length - kept.size;
-  return { band, top, rows, leftOut, height: y - top + GAP };
+  const movedLeftOut = moved.length - keptMoved.size;
+  return { band, top, rows, leftOut, movedLeftOut, height: y - top + GAP };
 }
 
 function longest(rows: readonly BarRow[], most: number): readonly BarRow[] {

@@ -2,7 +2,7 @@ import { select } from 'd3';
 import type { WireBars } from '#contract/runs';
 import type { Pair } from '../graphs/swapMatrix';
 import { xOfValue, type ArrivalAxis } from './arrivalAxis';
-import { bettiCurve, largestGap, stairs } from './bettiGeometry';
+import { bettiCurve, largestGap, stairs, type BettiCurve } from './bettiGeometry';
 import type { Drawing } from './drawing';
 import type { Inks } from './inks';
 import { plumbLines } from './plumbLines';
@@ -83,27 +83,26 @@ function drawBand(node: SVGGElement | null, band: BettiBand, top: number, scene:
       .attr('fill', colour)
       .text(text);
   write(`Betti curve, dimension ${band.dimension}`, axis.left, top + 13, 'start', inks.quiet);
-  g.append('path')
-    .attr('d', stairs(before, x, y, ends, true))
-    .attr('fill', inks.hairline)
-    .attr('fill-opacity', 0.5);
-  if (after !== null) {
-    g.append('path')
-      .attr('d', stairs(after, x, y, ends, true))
-      .attr('fill', inks.madder)
-      .attr('fill-opacity', 0.16);
-  }
+  const area = stairs(before, x, y, ends, true);
+  g.append('path').attr('d', area).attr('fill', inks.hairline).attr('fill-opacity', 0.5);
   g.append('path').attr('d', `M${axis.left} ${base}H${axis.right}`).attr('stroke', inks.hairline);
-  g.append('path')
-    .attr('d', stairs(before, x, y, ends))
-    .attr('stroke', inks.ink)
-    .attr('stroke-width', 1.5);
+  const line = (curve: BettiCurve, colour: string) =>
+    g
+      .append('path')
+      .attr('d', stairs(curve, x, y, ends))
+      .attr('stroke', colour)
+      .attr('stroke-width', 1.5);
   if (after !== null) {
+    // Even-odd fills exactly what lies between the two curves.
     g.append('path')
-      .attr('d', stairs(after, x, y, ends))
-      .attr('stroke', inks.madder)
-      .attr('stroke-width', 1.5)
-      .attr('stroke-dasharray', '5 2');
+      .attr('d', area + stairs(after, x, y, ends, true))
+      .attr('fill-rule', 'evenodd')
+      .attr('fill', inks.madder)
+      .attr('fill-opacity', 0.4);
+    line(after, inks.madder);
+  }
+  line(before, inks.ink);
+  if (after !== null) {
     const { gap, at } = largestGap(before, after);
     if (gap > 0) {
       const right = x(at) > (axis.left + axis.right) / 2;

@@ -29,26 +29,35 @@ export function canvasLayer(element: HTMLElement): CanvasLayer {
   };
 }
 
-/** The weave of cells where nothing changes: two threads of a tile crossing at the slope of the cloth. */
+/** Pixels of one repeat of the weave: four threads. */
+const REPEAT = 12;
+
+/** The weave of cells where nothing changes: threads in two directions, each under every other one. */
 export function weavePattern(
   context: CanvasRenderingContext2D,
   ground: string,
   thread: string,
 ): CanvasPattern | string {
-  const size = 12;
   const tile = document.createElement('canvas');
-  tile.width = size;
-  tile.height = size;
+  tile.width = REPEAT;
+  tile.height = REPEAT;
   const pen = tile.getContext('2d');
   if (pen === null) return ground;
   pen.fillStyle = ground;
-  pen.fillRect(0, 0, size, size);
+  pen.fillRect(0, 0, REPEAT, REPEAT);
   pen.strokeStyle = thread;
-  pen.lineWidth = 1;
+  pen.lineWidth = 1.4;
+  pen.lineCap = 'butt';
   pen.beginPath();
-  for (let i = -size; i < 2 * size; i += 4) {
-    pen.moveTo(i, 0);
-    pen.lineTo(i + size, size);
+  const half = REPEAT / 2;
+  for (const [x, y] of [
+    [0, 0],
+    [half, half],
+  ] as const) {
+    pen.moveTo(x + 1, y + 1);
+    pen.lineTo(x + half - 1, y + half - 1);
+    pen.moveTo(x + half - 1, ((y + half) % REPEAT) + 1);
+    pen.lineTo(x + 1, ((y + half) % REPEAT) + half - 1);
   }
   pen.stroke();
   return context.createPattern(tile, 'repeat') ?? ground;

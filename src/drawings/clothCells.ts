@@ -72,7 +72,7 @@ function paintPaths(
 }
 
 /** The second thread of the weave: a little off the first, towards the ground. */
-export const weaveInk = (inks: Inks): string => (inks.dark ? '#2b3442' : '#efe9dd');
+export const weaveInk = (inks: Inks): string => (inks.dark ? '#313c4c' : '#f5f1e7');
 
 /**
  * The n × n square as an image, turned so that rows and columns become the two slopes of the cloth.

@@ -36,7 +36,8 @@ export function cellCentre(cloth: ClothGeometry, { p, q }: Pair): { x: number; y
 export function pairAtPoint(cloth: ClothGeometry, x: number, y: number): Pair | null {
   const middle = positionAt(cloth.axis, x);
   const apart = (cloth.base - y) / cloth.rise;
-  const p = Math.round(middle - apart / 2);
+  // Adding 0 turns the -0 of rounding into 0.
+  const p = Math.round(middle - apart / 2) + 0;
   const q = Math.round(middle + apart / 2);
   return p >= 0 && q < cloth.axis.nodeCount && p < q ? { p, q } : null;
 }

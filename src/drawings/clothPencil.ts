@@ -53,7 +53,7 @@ export function clothPencil(element: HTMLElement): ClothPencil {
       for (const { halo } of [chosen, cursor]) {
         halo.attr('stroke', inks.cloth).attr('stroke-width', 4.5);
       }
-      group.attr('stroke', inks.woad).attr('stroke-width', 1.5);
+      group.attr('stroke', inks.woad).attr('stroke-width', Math.min(1.5, cloth.axis.step / 9));
       group.attr('d', groupPath(cloth, members));
       put(chosen, selection);
     },

@@ -41,7 +41,9 @@ export interface NameEvents {
 }
 
 const TICK = 6;
-const NAME_ROOM = 128;
+/** Letters of a name, and pixels for each: bold ones are the widest. */
+const LETTERS = 18;
+const LETTER = 6.9;
 const RULER = 18;
 /** A drag shorter than this (pixels) is a click. */
 const DRAG = 6;
@@ -72,7 +74,8 @@ export function drawNames(element: HTMLElement, events: NameEvents): Drawing<Nam
   function drawBase(next: NamesScene): void {
     const { axis, inks, nodes } = next;
     const top = TICK + lanes(next);
-    const height = top + NAME_ROOM + RULER;
+    const longest = Math.max(3, ...nodes.map(({ label }) => Math.min(LETTERS, label.length)));
+    const height = top + 16 + longest * LETTER + RULER;
     svg.attr('width', axis.width).attr('height', height).attr('font-family', inks.font);
     element.style.height = `${height}px`;
     brush.attr('height', height).attr('fill', inks.woad).attr('width', 0);
@@ -126,7 +129,7 @@ export function drawNames(element: HTMLElement, events: NameEvents): Drawing<Nam
       .attr('transform', (p) => `translate(${xAt(axis, p) - 4} ${top}) rotate(90)`)
       .attr('fill', (p) => (strong.has(p) ? inks.ink : members.has(p) ? inks.woad : inks.quiet))
       .attr('font-weight', (p) => (strong.has(p) || members.has(p) ? 650 : 400))
-      .text((p) => (members.has(p) ? '● ' : '') + shortened(nodes[p]?.label ?? '', 18));
+      .text((p) => (members.has(p) ? '● ' : '') + shortened(nodes[p]?.label ?? '', LETTERS));
     marks.selectAll('*').remove();
     const stroke = (positions: Iterable<number>, colour: string, width: number): void => {
       const path = [...positions].map((p) => `M${xAt(axis, p)} 0V${TICK + 2}`).join('');

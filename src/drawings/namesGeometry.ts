@@ -38,7 +38,7 @@ export function rulerMarks(axis: ArrivalAxis, raw: readonly string[]): RulerMark
   const marks: RulerMark[] = [];
   for (let p = first; p <= last; p += every) {
     const x = xAt(axis, p);
-    if (x + text <= axis.width) marks.push({ x, text: raw[p] ?? '' });
+    if (x + text + 6 <= axis.width) marks.push({ x, text: raw[p] ?? '' });
   }
   return marks;
 }
