@@ -20,9 +20,12 @@ const FIRST_DAY = 19_422;
 const KILOMETRES_A_DAY = 0.14;
 const SCATTER = 110;
 
-interface Station {
+interface Place {
   readonly x: number;
   readonly y: number;
+}
+
+interface Station extends Place {
   /** Days since 1970-01-01. */
   readonly commissioned: number;
 }
@@ -49,13 +52,16 @@ export function ternBank(seed = SEED): DemoNetwork {
       'source,target,weight',
       stations.flatMap((one, i) =>
         stations.slice(0, i).flatMap((other, j) => {
-          const distance = Math.hypot(one.x - other.x, one.y - other.y);
+          const distance = between(one, other);
           return distance <= REACH ? [[idOf(j), idOf(i), distance.toFixed(2)]] : [];
         }),
       ),
     ),
   };
 }
+
+/** Kilometres; from operations whose rounding IEEE 754 fixes, which that of Math.hypot is not. */
+const between = (a: Place, b: Place): number => Math.sqrt((a.x - b.x) ** 2 + (a.y - b.y) ** 2);
 
 const idOf = (i: number): string => `tb${String(i + 1).padStart(2, '0')}`;
 
@@ -70,8 +76,8 @@ function placed(source: Source): Station[] {
   while (stations.length < STATIONS) {
     const x = WIDTH * source.real();
     const y = HEIGHT * source.real();
-    const taken = stations.some((other) => Math.hypot(x - other.x, y - other.y) < APART);
-    if (taken || Math.hypot(x - WRECKS.x, y - WRECKS.y) < WRECKS.radius) continue;
+    const taken = stations.some((other) => between({ x, y }, other) < APART);
+    if (taken || between({ x, y }, WRECKS) < WRECKS.radius) continue;
     const day = x / KILOMETRES_A_DAY + SCATTER * source.real();
     stations.push({ x, y, commissioned: FIRST_DAY + Math.floor(day) });
   }
