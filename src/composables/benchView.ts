@@ -5,7 +5,7 @@ import { readView, writeView, type BenchView } from './benchQuery';
 export interface BenchViewState {
   readonly view: ComputedRef<BenchView>;
   /** Changes part of the view and the link with it; the page stays where it is. */
-  change(part: Partial<BenchView>): void;
+  readonly change: (part: Partial<BenchView>) => void;
 }
 
 /** The view of the bench, kept in the query of the address. */

@@ -11,7 +11,8 @@ const percents = new Intl.NumberFormat(undefined, { style: 'percent', maximumFra
 
 export const writeNumber = (value: number): string => figures.format(value);
 /** Similarities and modularities: always two decimals, so that columns line up. */
-export const writeShare = (value: number): string => shares.format(value);
+export const writeShare = (value: number): string =>
+  shares.format(Math.abs(value) < 0.005 ? 0 : value);
 export const writePercent = (value: number): string => percents.format(value);
 
 /** Unit of the filtration: one and many. Bare numbers have none. */
@@ -25,6 +26,16 @@ export function unitOf(scale: Scale, unit: EntryUnit): readonly [one: string, ma
     case 'number':
       return ['', ''];
   }
+}
+
+/** An entry as text where only its number is known: ISO date or date-time, or the number itself. */
+export function writeEntry(entryUnit: EntryUnit, entry: number): string {
+  if (entryUnit === 'number') return writeNumber(entry);
+  const milliseconds = entry * (entryUnit === 'days' ? 86_400_000 : 1000);
+  const date = new Date(milliseconds);
+  if (Number.isNaN(date.getTime())) return writeNumber(entry);
+  const iso = date.toISOString();
+  return entryUnit === 'days' ? iso.slice(0, 10) : `${iso.slice(0, 19)}Z`;
 }
 
 export function amountOf(scale: Scale, entryUnit: EntryUnit): Amount {

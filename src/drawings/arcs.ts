@@ -82,7 +82,8 @@ export function drawArcs(element: HTMLElement, events: PairEvents): Drawing<Arcs
         element.style.height = `${next.height}px`;
         repaint(next, cloth);
       }
-      pencil.update(cloth, next.inks, next.selection, next.group);
+      // A group shows on the axis: outlines of cells would read as arcs here.
+      pencil.update(cloth, next.inks, next.selection, []);
       point(cursor);
     },
     point,

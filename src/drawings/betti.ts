@@ -1,4 +1,4 @@
-import { select } from 'd3';
+import { select, sum } from 'd3';
 import type { WireBars } from '#contract/runs';
 import type { Pair } from '../graphs/swapMatrix';
 import { xOfValue, type ArrivalAxis } from './arrivalAxis';
@@ -43,7 +43,8 @@ export function drawBetti(element: HTMLElement): Drawing<BettiScene> {
         scene.inks !== next.inks;
       scene = next;
       if (stale) {
-        const height = next.bands.length * (HEADING + CURVE + GAP);
+        const heights = next.bands.map(bandHeight);
+        const height = Math.max(HEADING, sum(heights));
         svg
           .attr('width', next.axis.width)
           .attr('height', height)
@@ -51,7 +52,7 @@ export function drawBetti(element: HTMLElement): Drawing<BettiScene> {
         element.style.height = `${height}px`;
         body.selectAll('*').remove();
         next.bands.forEach((band, index) =>
-          drawBand(body.append('g').node(), band, index * (HEADING + CURVE + GAP), next),
+          drawBand(body.append('g').node(), band, sum(heights.slice(0, index)), next),
         );
         lines.update(next.axis, height, next.inks);
       }
@@ -61,6 +62,12 @@ export function drawBetti(element: HTMLElement): Drawing<BettiScene> {
     destroy: () => svg.remove(),
   };
 }
+
+const isEmpty = ({ recorded, swapped }: BettiBand): boolean =>
+  recorded.length + (swapped?.length ?? 0) === 0;
+
+/** A dimension without bars keeps its heading only. */
+const bandHeight = (band: BettiBand): number => (isEmpty(band) ? HEADING : HEADING + CURVE + GAP);
 
 function drawBand(node: SVGGElement | null, band: BettiBand, top: number, scene: BettiScene): void {
   if (node === null) return;
@@ -82,7 +89,15 @@ function drawBand(node: SVGGElement | null, band: BettiBand, top: number, scene:
       .attr('font-size', 11)
       .attr('fill', colour)
       .text(text);
-  write(`Betti curve, dimension ${band.dimension}`, axis.left, top + 13, 'start', inks.quiet);
+  const none = isEmpty(band) ? ' · no bars' : '';
+  write(
+    `Betti curve, dimension ${band.dimension}${none}`,
+    axis.left,
+    top + 13,
+    'start',
+    inks.quiet,
+  );
+  if (isEmpty(band)) return;
   const area = stairs(before, x, y, ends, true);
   g.append('path').attr('d', area).attr('fill', inks.hairline).attr('fill-opacity', 0.5);
   g.append('path').attr('d', `M${axis.left} ${base}H${axis.right}`).attr('stroke', inks.hairline);

@@ -3,16 +3,16 @@ import type { Pair } from '../graphs/swapMatrix';
 /** Every drawing is made on an element and returns how it is changed and taken away. */
 export interface Drawing<Scene> {
   /** Draws the scene; cheap where nothing that shows has changed. */
-  update(scene: Scene): void;
+  readonly update: (scene: Scene) => void;
   /** Moves the cursor that all drawings share. Never redraws the base. */
-  point(pair: Pair | null): void;
-  destroy(): void;
+  readonly point: (pair: Pair | null) => void;
+  readonly destroy: () => void;
 }
 
 /** What a drawing tells its owner. */
 export interface PairEvents {
   /** The cursor is on a pair, or on none. `spoken` if the keyboard moved it. */
-  onPoint(pair: Pair | null, spoken: boolean): void;
+  readonly onPoint: (pair: Pair | null, spoken: boolean) => void;
   /** A pair was chosen, or the choice was cleared. */
-  onSelect(pair: Pair | null): void;
+  readonly onSelect: (pair: Pair | null) => void;
 }
