@@ -7,7 +7,8 @@ export default defineConfig({
         test: {
           name: 'unit',
           include: ['test/{engine,contract,formats,house,src,published,queue}/**/*.test.ts'],
-          testTimeout: 60_000,
+          testTimeout: 120_000,
+          sequence: { groupOrder: 0 },
         },
       },
       {
@@ -15,15 +16,20 @@ export default defineConfig({
           name: 'reference',
           include: ['test/reference/**/*.test.ts'],
           testTimeout: 300_000,
+          sequence: { groupOrder: 0 },
         },
       },
       {
+        // These start servers and workers of their own and kill them: one file at a time, so that
+        // none of them waits for the processor of another.
         test: {
           name: 'api',
           include: ['test/{server,db,jobs}/**/*.test.ts'],
-          testTimeout: 60_000,
-          hookTimeout: 60_000,
+          testTimeout: 120_000,
+          hookTimeout: 120_000,
           pool: 'forks',
+          maxWorkers: 1,
+          sequence: { groupOrder: 1 },
         },
       },
     ],
