@@ -1,12 +1,13 @@
 /** `npm test`: installs what is missing, then every check and test; the last line counts them. */
-import { spawnSync } from 'node:child_process';
+import { spawn } from 'node:child_process';
+import { once } from 'node:events';
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
 import { root, stateDir } from './paths.mjs';
 import { asCommand, holdLock, PlainError, requireNode } from './plain.mjs';
 import { startPostgres } from './postgres.mjs';
 import { ensureBuilt, ensurePackages } from './prepare.mjs';
-import { freePort } from './process.mjs';
+import { endProcess, freePort } from './process.mjs';
 import { ensurePrograms } from './programs.mjs';
 import { startRedis } from './redis.mjs';
 
@@ -20,25 +21,29 @@ async function endAll() {
   for (const end of started.reverse()) await end();
 }
 
-/** Runs a program with its output on screen. @returns its status */
-function run(name, args, environment) {
-  const { status } = spawnSync(name, args, {
+/** Runs a program with its output on screen; stopping ends it too. @returns its status */
+async function run(name, args, environment) {
+  if (stopping) return 1;
+  const child = spawn(name, args, {
     cwd: root,
     stdio: 'inherit',
     env: { ...process.env, ...environment },
   });
+  started.push(() => endProcess(child.pid, 'SIGTERM', 30_000));
+  const [status] = await once(child, 'exit');
   return status ?? 1;
 }
 
-function checks(environment) {
-  const failed = ['types', 'lint', 'formatted'].filter(
-    (name) => run('npm', ['run', '--silent', name], environment) !== 0,
-  );
+async function checks(environment) {
+  const failed = [];
+  for (const name of ['types', 'lint', 'formatted']) {
+    if ((await run('npm', ['run', '--silent', name], environment)) !== 0) failed.push(name);
+  }
   for (const name of failed) console.error(`npm run ${name} failed.`);
   return { passed: 3 - failed.length, failed: failed.length };
 }
 
-/** @returns counts from a JSON report; a run that wrote none counts as one failure */
+/** @returns counts from a JSON report; a run that failed without a failed test counts as one failure */
 function counted(file, status, read) {
   const counts = existsSync(file)
     ? read(JSON.parse(readFileSync(file, 'utf8')))
@@ -46,34 +51,24 @@ function counted(file, status, read) {
   return status !== 0 && counts.failed === 0 ? { ...counts, failed: 1 } : counts;
 }
 
-function vitest(environment) {
+async function vitest(environment) {
   const report = join(testDir, 'vitest.json');
   rmSync(report, { force: true });
-  const status = run(
-    'npx',
-    ['vitest', 'run', '--reporter=default', '--reporter=json', `--outputFile.json=${report}`],
-    environment,
-  );
-  return counted(
-    report,
-    status,
-    ({ numPassedTests, numFailedTests, numFailedTestSuites, testResults }) => {
-      // A file that could not be loaded has no tests to fail, but it did fail.
-      const unloaded = testResults.filter(
-        ({ status: one, assertionResults }) => one === 'failed' && assertionResults.length === 0,
-      );
-      return {
-        passed: numPassedTests,
-        failed: numFailedTests + (numFailedTestSuites > 0 ? unloaded.length : 0),
-      };
-    },
-  );
+  const args = ['vitest', 'run', '--reporter=default', '--reporter=json'];
+  const status = await run('npx', [...args, `--outputFile.json=${report}`], environment);
+  return counted(report, status, ({ numPassedTests, numFailedTests, testResults }) => {
+    // A file that could not be loaded has no tests to fail, but it did fail.
+    const unloaded = testResults.filter(
+      ({ status: end, assertionResults }) => end === 'failed' && assertionResults.length === 0,
+    );
+    return { passed: numPassedTests, failed: numFailedTests + unloaded.length };
+  });
 }
 
-function playwright(environment) {
+async function playwright(environment) {
   const report = join(testDir, 'playwright.json');
   rmSync(report, { force: true });
-  const status = run('npx', ['playwright', 'test', '--reporter=list,json'], {
+  const status = await run('npx', ['playwright', 'test', '--reporter=list,json'], {
     ...environment,
     PLAYWRIGHT_JSON_OUTPUT_FILE: report,
   });
@@ -96,7 +91,9 @@ async function test() {
     HEDDLE_TEST_REDIS_URL: redis.url,
     HEDDLE_E2E_PORT: String(await freePort(join(testDir, 'port'))),
   };
-  const results = [checks(environment), vitest(environment), playwright(environment)];
+  const results = [];
+  for (const part of [checks, vitest, playwright]) results.push(await part(environment));
+  if (stopping) return;
   await stop();
   const sum = (key) => results.reduce((total, counts) => total + counts[key], 0);
   console.log(`\n${sum('passed')} passed, ${sum('failed')} failed`);
