@@ -1,3 +1,4 @@
+import { tmpdir } from 'node:os';
 import { z } from 'zod';
 
 const LOOPBACK = new Set(['127.0.0.1', 'localhost', '[::1]', '::1']);
@@ -38,6 +39,8 @@ const environment = z.object({
   HEDDLE_SPA_DIR: z.preprocess(filled, text.optional()),
   /** The built script of the thread that reads uploads. */
   HEDDLE_PARSE_THREAD: z.preprocess(filled, text.default('dist/parseThread.js')),
+  /** Where uploads lie while they are read; the system's temporary folder unless told otherwise. */
+  HEDDLE_UPLOAD_DIR: z.preprocess(filled, text.default(tmpdir())),
   /** Least severe line that is logged. */
   LOG_LEVEL: z.preprocess(
     filled,
@@ -59,6 +62,7 @@ export interface ServerConfig {
   readonly demo: boolean;
   readonly spaFolder: string | null;
   readonly parseThread: string;
+  readonly uploadFolder: string;
   readonly logLevel: string;
 }
 
@@ -98,6 +102,7 @@ export function readConfig(source: NodeJS.ProcessEnv = process.env): ServerConfi
     demo: env.HEDDLE_DEMO === '1',
     spaFolder: env.HEDDLE_SPA_DIR ?? null,
     parseThread: env.HEDDLE_PARSE_THREAD,
+    uploadFolder: env.HEDDLE_UPLOAD_DIR,
     logLevel: env.LOG_LEVEL,
   };
 }

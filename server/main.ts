@@ -8,6 +8,7 @@ import { makeSessions } from './auth/sessions';
 import { makeThrottle } from './auth/throttle';
 import { ConfigurationError, readConfig, type ServerConfig } from './config';
 import { makeNetworkReader } from './datasets/networkReader';
+import { removeAbandonedUploads } from './datasets/upload';
 import { DEMO_ACCOUNTS } from './demo/accounts';
 import { CONNECTION_LIMITS } from './http/connections';
 import { makeRunRoutes } from './runs/routes';
@@ -47,6 +48,9 @@ function listen(
       .sweep()
       .catch((error: unknown) => log.warn({ err: error }, 'ended sessions were not removed'));
   }, SWEEP_EVERY);
+  removeAbandonedUploads(config.uploadFolder).catch((error: unknown) =>
+    log.warn({ err: error }, 'abandoned uploads were not removed'),
+  );
   const server = createServer(CONNECTION_LIMITS, app);
   server.once('error', (error) => {
     log.fatal({ err: error }, `cannot listen on ${config.host}:${config.port}`);

@@ -1,6 +1,7 @@
 import { randomBytes } from 'node:crypto';
 import { Argon2id } from 'oslo/password';
 import { Failure } from '../http/failure';
+import { makeTurns } from '../http/turns';
 
 /** Argon2id with m = 19 MiB, t = 2, p = 1 (OWASP Password Storage Cheat Sheet). */
 const ARGON2 = { memorySize: 19_456, iterations: 2, parallelism: 1 } as const;
@@ -21,7 +22,7 @@ export interface Passwords {
 
 export function makePasswords(): Passwords {
   const argon2 = new Argon2id(ARGON2);
-  const inTurn = makeTurns(AT_ONCE, WAITING);
+  const inTurn = makeTurns(AT_ONCE, WAITING, busy);
   let dummy: Promise<string> | null = null;
   const dummyHash = () => (dummy ??= argon2.hash(randomBytes(24).toString('base64url')));
   // Made before the first sign-in, so that the first unknown address is not slower than the rest.
@@ -33,28 +34,6 @@ export function makePasswords(): Passwords {
         const known = await argon2.verify(hash ?? (await dummyHash()), password);
         return hash !== null && known;
       }),
-  };
-}
-
-/** Runs at most `atOnce` tasks together and refuses when `most` are waiting. */
-function makeTurns(atOnce: number, most: number): <T>(task: () => Promise<T>) => Promise<T> {
-  let running = 0;
-  const waiting: (() => void)[] = [];
-  return async (task) => {
-    if (running >= atOnce) {
-      if (waiting.length >= most) throw busy();
-      await new Promise<void>((resolve) => waiting.push(resolve));
-    } else {
-      running++;
-    }
-    try {
-      return await task();
-    } finally {
-      // The place goes to the next in line, else it is free.
-      const next = waiting.shift();
-      if (next === undefined) running--;
-      else next();
-    }
   };
 }
 

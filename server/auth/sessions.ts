@@ -81,7 +81,7 @@ export function makeSessions(db: Db, secure: boolean): Sessions {
       return null;
     }
     const until = Math.min(Date.now() + IDLE_LIMIT, end);
-    if (until - session.expiresAt.getTime() > TOUCH_AFTER || session.fresh) {
+    if (Math.abs(until - session.expiresAt.getTime()) > TOUCH_AFTER || session.fresh) {
       await adapter.updateSessionExpiration(secret, new Date(until));
     }
     return { userId: user.id, name: user.name, email: user.email };

@@ -45,20 +45,24 @@ export function makeThrottle(
   prefix = 'heddle',
 ): Throttle {
   const redis = redisUrl === null ? null : connect(redisUrl, log);
+  const tried = redis === null ? Promise.resolve() : firstTry(redis);
   const account = makeLimiter(redis, `${prefix}-sign-in-account`, limits.account);
   const address = makeLimiter(redis, `${prefix}-sign-in-address`, limits.address);
   const signUp = makeLimiter(redis, `${prefix}-sign-up-address`, limits.signUp);
   return {
     beforeSignIn: async (email, from) => {
       const code = 'session.too_many_attempts';
+      await tried;
       await consume(address, from, code, 'sign in from this address');
       await consume(account, keyOf(email), code, 'sign in to this account');
     },
     afterSignIn: async (email) => {
       await account.delete(keyOf(email));
     },
-    beforeSignUp: (from) =>
-      consume(signUp, from, 'accounts.too_many', 'make an account from this address'),
+    beforeSignUp: async (from) => {
+      await tried;
+      await consume(signUp, from, 'accounts.too_many', 'make an account from this address');
+    },
     close: () => {
       redis?.disconnect();
       return Promise.resolve();
@@ -79,6 +83,15 @@ function connect(url: string, log: Logger): Redis {
   });
   redis.on('error', (error) => log.warn({ err: error }, 'Redis is away; attempts count in memory'));
   return redis;
+}
+
+/** Resolves once Redis has answered or failed to: the first attempts are not to miss it. */
+function firstTry(redis: Redis): Promise<void> {
+  return new Promise((resolve) => {
+    redis.once('ready', () => resolve());
+    redis.once('error', () => resolve());
+    redis.once('end', () => resolve());
+  });
 }
 
 function makeLimiter(

@@ -2,7 +2,7 @@ import { resolve } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import { Piscina } from 'piscina';
 import type { Logger } from 'pino';
-import { Failure } from '../http/failure';
+import { makeTurns } from '../http/turns';
 import { readingTooLarge, readingTooSlow, tooManyReadings, wrongFiles } from './errors';
 import type { ReadRequest, ReadOutcome, ReadNetwork } from './readMessages';
 
@@ -36,14 +36,15 @@ export function makeNetworkReader(options: ReaderOptions): NetworkReader {
     filename: pathToFileURL(resolve(script)).href,
     minThreads: 0,
     maxThreads: THREADS,
-    maxQueue: WAITING,
     idleTimeout: 10_000,
     resourceLimits: { maxOldGenerationSizeMb: heap },
   });
+  // The time limit counts from the turn, not from the wait.
+  const inTurn = makeTurns(THREADS, WAITING, tooManyReadings);
   pool.on('error', (error) => log.error({ err: error }, 'the reading thread failed'));
   return {
     read: async ({ nodesPath, edgesPath }) => {
-      const outcome = await run(pool, { nodesPath, edgesPath }, heap, time);
+      const outcome = await inTurn(() => run(pool, { nodesPath, edgesPath }, heap, time));
       if ('issues' in outcome) throw wrongFiles(outcome.issues, outcome.leftOut);
       return outcome;
     },
@@ -63,12 +64,10 @@ async function run(
     return await pool.run(request, { signal: limit });
   } catch (error) {
     if (limit.aborted) throw readingTooSlow(time);
-    throw failureOfPool(error, heap) ?? error;
+    throw outOfMemory(error) ? readingTooLarge(heap) : error;
   }
 }
 
-function failureOfPool(error: unknown, heap: number): Failure | null {
-  if (!(error instanceof Error)) return null;
-  if ('code' in error && error.code === 'ERR_WORKER_OUT_OF_MEMORY') return readingTooLarge(heap);
-  return /queue is at limit/i.test(error.message) ? tooManyReadings() : null;
+function outOfMemory(error: unknown): boolean {
+  return error instanceof Error && 'code' in error && error.code === 'ERR_WORKER_OUT_OF_MEMORY';
 }

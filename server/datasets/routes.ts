@@ -20,7 +20,7 @@ type DatasetRoutes = Pick<
   'datasets' | 'createDataset' | 'dataset' | 'createRevision' | 'revision'
 >;
 
-export function datasetRoutes({ database: { db }, reader }: Dependencies): DatasetRoutes {
+export function datasetRoutes({ config, database: { db }, reader }: Dependencies): DatasetRoutes {
   return {
     datasets: route('datasets', {}, async ({ member }) =>
       ok({ datasets: (await datasetsOf(db, member)).map(presentDataset) }),
@@ -29,7 +29,7 @@ export function datasetRoutes({ database: { db }, reader }: Dependencies): Datas
       ok(presentDataset(await datasetOf(db, member, params.datasetId))),
     ),
     createDataset: route('createDataset', { body: 'multipart' }, ({ member, request }) =>
-      withUpload(request, async (upload) => {
+      withUpload(request, config.uploadFolder, async (upload) => {
         const fields = parseBody(createDatasetFields, upload.fields);
         const id = await createDataset(db, member, fields, await reader.read(upload));
         return created(presentDataset(await datasetOf(db, member, id)));
@@ -40,7 +40,7 @@ export function datasetRoutes({ database: { db }, reader }: Dependencies): Datas
       { params: oneDataset, body: 'multipart' },
       async ({ member, params, request }) => {
         await datasetOf(db, member, params.datasetId);
-        return withUpload(request, async (upload) => {
+        return withUpload(request, config.uploadFolder, async (upload) => {
           parseBody(noFields, upload.fields);
           await createRevision(db, member, params.datasetId, await reader.read(upload));
           return created(presentDataset(await datasetOf(db, member, params.datasetId)));

@@ -1,7 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { mkdtemp, rm } from 'node:fs/promises';
-import { tmpdir } from 'node:os';
+import { mkdtemp, readdir, rm, stat } from 'node:fs/promises';
 import { join } from 'node:path';
 import { Transform, type Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
@@ -29,6 +28,9 @@ const FILES = new Map<string, UploadedFile>([
 const FORM_BYTES = 256 * 1024;
 const FIELD_BYTES = 16 * 1024;
 const MOST_PARTS = 20;
+const PREFIX = 'heddle-upload-';
+/** Milliseconds. */
+const ABANDONED_AFTER = 6 * 60 * 60 * 1000;
 
 /** What arrived, under random names in a temporary folder of its own. */
 export interface Upload {
@@ -37,21 +39,35 @@ export interface Upload {
   readonly edgesPath: string;
 }
 
-/** Receives the form, hands it to `use`, and removes the folder whatever happens. */
+/** Receives the form into `folder`, hands it to `use`, and removes the files whatever happens. */
 export async function withUpload<T>(
   request: Request,
+  folder: string,
   use: (upload: Upload) => Promise<T>,
-  fileBytes: number = UPLOAD_LIMITS.fileBytes,
 ): Promise<T> {
   if ((request.get('content-encoding') ?? 'identity') !== 'identity') throw uploadEncoded();
-  const folder = await mkdtemp(join(tmpdir(), 'heddle-upload-'));
   try {
-    return await use(await receive(request, folder, fileBytes));
+    const own = await mkdtemp(join(folder, PREFIX));
+    try {
+      return await use(await receive(request, own, UPLOAD_LIMITS.fileBytes));
+    } finally {
+      await rm(own, { recursive: true, force: true });
+    }
   } catch (error) {
     const code = error instanceof Error && 'code' in error ? error.code : '';
     throw code === 'ENOSPC' || code === 'EDQUOT' ? storageFull(error) : error;
-  } finally {
-    await rm(folder, { recursive: true, force: true });
+  }
+}
+
+/** Removes what servers that were killed left behind: uploads live for minutes, not for hours. */
+export async function removeAbandonedUploads(folder: string): Promise<void> {
+  for (const name of await readdir(folder)) {
+    if (!name.startsWith(PREFIX)) continue;
+    const own = join(folder, name);
+    const made = await stat(own).catch(() => null);
+    if (made !== null && Date.now() - made.mtimeMs > ABANDONED_AFTER) {
+      await rm(own, { recursive: true, force: true });
+    }
   }
 }
 

@@ -58,7 +58,8 @@ function chain(error: unknown): Error[] {
     const next = waiting.shift();
     if (!(next instanceof Error)) continue;
     found.push(next);
-    waiting.push(next.cause, ...(next instanceof AggregateError ? next.errors : []));
+    waiting.push(next.cause);
+    if (next instanceof AggregateError) for (const one of next.errors) waiting.push(one);
   }
   return found;
 }

@@ -83,7 +83,7 @@ export const answerProblem: ErrorRequestHandler = (error: unknown, request, resp
     detail:
       failure?.detail ??
       'Something broke on the server. Nothing was saved; try again, and give the request id to whoever runs it.',
-    requestId: String(request.id),
+    requestId: response.get('X-Request-Id') ?? '',
     ...(failure?.options.issues === undefined ? {} : { issues: [...failure.options.issues] }),
     ...(failure?.options.issuesLeftOut ? { issuesLeftOut: failure.options.issuesLeftOut } : {}),
   };

@@ -27,11 +27,6 @@ interface Raw {
   readonly signal: AbortSignal;
 }
 
-export interface PublicScope extends Raw {
-  /** Null without a session. */
-  readonly actor: Actor | null;
-}
-
 export interface AccountScope extends Raw {
   readonly actor: Actor;
 }
@@ -44,11 +39,7 @@ export interface MemberScope extends AccountScope {
 
 type AccessOf<N extends RouteName> = (typeof ROUTES)[N]['access'];
 export type ScopeOf<N extends RouteName> =
-  AccessOf<N> extends 'public'
-    ? PublicScope
-    : AccessOf<N> extends 'account'
-      ? AccountScope
-      : MemberScope;
+  AccessOf<N> extends 'public' ? Raw : AccessOf<N> extends 'account' ? AccountScope : MemberScope;
 
 /** What a handler answers; `SENT` where it wrote to the response by itself. */
 export type Reply =

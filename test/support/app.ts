@@ -1,14 +1,18 @@
 import { randomUUID } from 'node:crypto';
 import { once } from 'node:events';
+import { mkdtemp, rm } from 'node:fs/promises';
 import { createServer } from 'node:http';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { pino } from 'pino';
+import { openDatabase, type Database } from '../../db/client';
 import { openListener } from '../../db/listener';
 import { secondsSinceBeat } from '../../db/repositories/beats';
 import { createApp } from '../../server/app';
 import { makeSessions } from '../../server/auth/sessions';
 import { makeThrottle, THROTTLE_LIMITS, type ThrottleLimits } from '../../server/auth/throttle';
 import { readConfig } from '../../server/config';
-import { makeNetworkReader, type ReaderOptions } from '../../server/datasets/networkReader';
+import { makeNetworkReader } from '../../server/datasets/networkReader';
 import { DEMO_ACCOUNTS } from '../../server/demo/accounts';
 import { CONNECTION_LIMITS } from '../../server/http/connections';
 import { makeRunRoutes } from '../../server/runs/routes';
@@ -18,7 +22,8 @@ import { buildParseThread } from './parseThread';
 
 export interface TestApp {
   readonly origin: string;
-  readonly database: TestDatabase;
+  /** Where uploads lie while they are read; nobody else's. */
+  readonly uploadFolder: string;
   readonly db: TestDatabase['db'];
   /** Somebody without a session. */
   visitor(): Client;
@@ -32,25 +37,30 @@ export interface AppOptions {
   readonly limits?: Partial<ThrottleLimits>;
   /** Attempts count in this Redis, under keys of their own; in memory without one. */
   readonly redisUrl?: string;
-  readonly reader?: Pick<ReaderOptions, 'heap' | 'time'>;
+  /** The address by which the application reaches the database, e.g. one that can be cut off. */
+  readonly reach?: (databaseUrl: string) => string;
 }
 
 /** Starts the real application on a loopback port over a database of its own. */
 export async function startApp(options: AppOptions = {}): Promise<TestApp> {
-  const database = await freshDatabase();
+  const fresh = await freshDatabase();
+  const url = options.reach?.(fresh.url) ?? fresh.url;
+  const database: Database = options.reach === undefined ? fresh : openDatabase({ url });
   const { script, remove } = await buildParseThread();
+  const uploadFolder = await mkdtemp(join(tmpdir(), 'heddle-test-'));
   const config = readConfig({
     NODE_ENV: 'test',
-    DATABASE_URL: database.url,
+    DATABASE_URL: url,
+    HEDDLE_UPLOAD_DIR: uploadFolder,
     LOG_LEVEL: 'silent',
     ...options.environment,
   });
   const log = pino({ level: config.logLevel });
   const closing = new AbortController();
-  const listener = openListener(database.url, () => undefined);
+  const listener = openListener(url, () => undefined);
   const limits = { ...THROTTLE_LIMITS, ...options.limits };
   const throttle = makeThrottle(options.redisUrl ?? null, log, limits, `test-${randomUUID()}`);
-  const reader = makeNetworkReader({ script, log, ...options.reader });
+  const reader = makeNetworkReader({ script, log });
   const app = createApp(
     {
       config,
@@ -69,11 +79,11 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
   const address = server.address();
   if (typeof address !== 'object' || address === null) throw new Error('No port.');
   const origin = `http://127.0.0.1:${address.port}`;
-  const sessions = makeSessions(database.db, config.secure);
+  const sessions = makeSessions(fresh.db, config.secure);
   return {
     origin,
-    database,
-    db: database.db,
+    uploadFolder,
+    db: fresh.db,
     visitor: () => new Client(origin),
     clientOf: async (userId) => new Client(origin, await sessions.start(userId)),
     close: async () => {
@@ -82,8 +92,10 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
       server.close();
       await once(server, 'close');
       await Promise.all([listener.close(), reader.close(), throttle.close()]);
-      await database.drop();
+      if (database !== fresh) await database.close();
+      await fresh.drop();
       remove();
+      await rm(uploadFolder, { recursive: true, force: true });
     },
   };
 }

@@ -45,16 +45,16 @@ export class Client {
   }
 
   async ask(path: string, { method, json, form, headers = {} }: Asked): Promise<Answer> {
-    const sent = new Map<string, string | null>([['origin', this.origin]]);
+    const sent = new Headers({ origin: this.origin });
     if (this.cookie !== '') sent.set('cookie', this.cookie);
     if (json !== undefined) sent.set('content-type', 'application/json');
-    for (const [name, value] of Object.entries(headers)) sent.set(name, value);
+    for (const [name, value] of Object.entries(headers)) {
+      if (value === null) sent.delete(name);
+      else sent.set(name, value);
+    }
     const response = await fetch(`${this.origin}${path}`, {
       method: method ?? (form === undefined ? 'GET' : 'POST'),
-      headers: [...sent].flatMap(([name, value]) => (value === null ? [] : [[name, value]])) as [
-        string,
-        string,
-      ][],
+      headers: sent,
       body: form ?? (json === undefined ? undefined : JSON.stringify(json)),
       redirect: 'manual',
     });

@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { eq } from 'drizzle-orm';
 import type { Role } from '../../server/contract/enums';
 import { encodeBarcode } from '../../db/codecs/barcode';
 import { encodeBlockResult } from '../../db/codecs/blockResult';
@@ -6,6 +7,7 @@ import { encodeUint32 } from '../../db/codecs/typedArrays';
 import { insertGroup } from '../../db/repositories/groups';
 import { insertMember } from '../../db/repositories/memberships';
 import { listRevisions } from '../../db/repositories/revisions';
+import { createRun } from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import { insertUser } from '../../db/repositories/users';
 import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
@@ -83,68 +85,40 @@ export async function makeDataset(db: Db, scope: Scope, name = 'Path of three') 
   return { id, revisionId: revision.id };
 }
 
-let lastNumber = 0;
+/** A run that waits for a worker; none works in these tests. */
+export async function makeQueuedRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
+  const wanted = { revisionId, scale: 'entry' as const, dimensions: [0], idempotencyKey: null };
+  const made = await createRun(db, scope, wanted);
+  if (made.kind !== 'created') throw new Error(made.kind);
+  return made.runId;
+}
 
 /** A run of three nodes that is done, with one block; the swap of the first two was refused. */
 export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
-  const { workspaceId, userId } = scope;
-  const [run] = await db
-    .insert(runs)
-    .values({
-      workspaceId,
-      revisionId,
-      number: ++lastNumber,
-      scale: 'entry',
-      dimensions: [0],
-      engineVersion: 'test',
-      state: 'done',
-      attempt: 1,
-      pairsTotal: 3,
-      pairsDone: 3,
-      blockCount: 1,
-      blocksDone: 1,
-      barcode: encodeBarcode([
-        { births: Float64Array.of(1), deaths: Float64Array.of(Number.POSITIVE_INFINITY) },
-      ]),
-      requestedBy: userId,
-      startedAt: new Date(),
-      finishedAt: new Date(),
-    })
-    .returning({ id: runs.id });
-  if (run === undefined) throw new Error('The run was not returned.');
+  const { workspaceId } = scope;
+  const runId = await makeQueuedRun(db, scope, revisionId);
+  const barcode = encodeBarcode([
+    { births: Float64Array.of(1), deaths: Float64Array.of(Number.POSITIVE_INFINITY) },
+  ]);
+  const finishedAt = new Date();
+  await db
+    .update(runs)
+    .set({ state: 'done', pairsDone: 3, blockCount: 1, blocksDone: 1, barcode, finishedAt })
+    .where(eq(runs.id, runId));
   await db.insert(runBlocks).values({
     workspaceId,
-    runId: run.id,
+    runId,
     block: 0,
     pairs: 3,
     rows: encodeUint32(Uint32Array.of(0, 1)),
     result: encodeBlockResult({ distances: new Float64Array(3), bettiGaps: new Int32Array(3) }),
     landed: 1,
     attempt: 1,
-    finishedAt: new Date(),
+    finishedAt,
   });
-  await db
-    .insert(pairDetails)
-    .values({ workspaceId, runId: run.id, p: 0, q: 1, failure: 'Not part of this test.' });
-  return run.id;
-}
-
-export async function makeQueuedRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
-  const { workspaceId, userId } = scope;
-  const [run] = await db
-    .insert(runs)
-    .values({
-      workspaceId,
-      revisionId,
-      number: ++lastNumber,
-      scale: 'entry',
-      dimensions: [0],
-      pairsTotal: 3,
-      requestedBy: userId,
-    })
-    .returning({ id: runs.id });
-  if (run === undefined) throw new Error('The run was not returned.');
-  return run.id;
+  const failure = 'Not part of this test.';
+  await db.insert(pairDetails).values({ workspaceId, runId, p: 0, q: 1, failure });
+  return runId;
 }
 
 export function makeGroup(db: Db, scope: Scope, runId: string): Promise<string> {
