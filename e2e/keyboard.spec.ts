@@ -23,7 +23,7 @@ test('signing in and starting a run need no mouse', async ({
   const { id } = await house.workspace('By keyboard');
   await house.dataset(id, 'Posts and ropes');
 
-  await signInPage.open();
+  await signInPage.open(`/workspaces/${id}`);
   await tabTo(page, signInPage.email);
   await page.keyboard.type(account.email);
   await tabTo(page, signInPage.password);

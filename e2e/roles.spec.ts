@@ -17,7 +17,7 @@ test('a reviewer reads a dataset but cannot start a run, and is told why', async
   const dataset = await house.dataset(id, 'Posts and ropes');
   await house.addMember(id, reviewer.email, 'reviewer');
 
-  await signInPage.open();
+  await signInPage.open(`/workspaces/${id}`);
   await signInPage.signIn(reviewer);
   await expect(workspacePage.title('Reviewed networks')).toBeVisible();
   await expect(workspacePage.bringIn).toHaveCount(0);

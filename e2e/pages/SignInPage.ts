@@ -20,8 +20,9 @@ export class SignInPage {
     return this.page.getByRole('alert');
   }
 
-  async open(): Promise<void> {
-    await this.page.goto('/sign-in');
+  /** @param wanted a page for members: its visitors come here first, and there afterwards. */
+  async open(wanted = '/sign-in'): Promise<void> {
+    await this.page.goto(wanted);
     await this.submit.waitFor();
   }
 
