@@ -55,11 +55,7 @@ export async function announceRun(db: Queryable, runId: string): Promise<void> {
 }
 
 /** Writes a queued run and the row that will enqueue its plan, in one transaction. */
-export async function createRun(
-  db: Db,
-  scope: Scope,
-  wanted: NewRun,
-): Promise<CreatedRun> {
+export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<CreatedRun> {
   const { userId, workspaceId } = scope;
   return db.transaction(async (tx) => {
     // Submissions of a workspace take turns: its numbers have no gaps and a repeat sees the first.
@@ -119,11 +115,7 @@ async function findByKey(db: Queryable, scope: Scope, key: string | null) {
 }
 
 /** @returns the run, or null if the workspace has no such run. */
-export async function findRun(
-  db: Queryable,
-  scope: Scope,
-  runId: string,
-): Promise<RunView | null> {
+export async function findRun(db: Queryable, scope: Scope, runId: string): Promise<RunView | null> {
   const [row] = await db
     .select({
       id: runs.id,
