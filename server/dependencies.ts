@@ -4,6 +4,7 @@ import type { Database } from '../db/client';
 import type { Throttle } from './auth/throttle';
 import type { ServerConfig } from './config';
 import type { NetworkReader } from './datasets/networkReader';
+import type { UploadFolder } from './datasets/upload';
 
 /** What the composition root hands to every part of the server. */
 export interface Dependencies {
@@ -11,6 +12,7 @@ export interface Dependencies {
   readonly database: Database;
   readonly log: Logger;
   readonly throttle: Throttle;
+  readonly uploads: UploadFolder;
   /** Reads uploaded files off the thread that answers requests. */
   readonly reader: NetworkReader;
   /** The invented accounts of a demo instance; null everywhere else. */

@@ -8,13 +8,15 @@ import { makeSessions } from './auth/sessions';
 import { makeThrottle } from './auth/throttle';
 import { ConfigurationError, readConfig, type ServerConfig } from './config';
 import { makeNetworkReader } from './datasets/networkReader';
-import { removeAbandonedUploads } from './datasets/upload';
+import { UploadFolder } from './datasets/upload';
 import { DEMO_ACCOUNTS } from './demo/accounts';
 import { CONNECTION_LIMITS } from './http/connections';
 import { makeRunRoutes } from './runs/routes';
 
 /** Milliseconds in which a server that was told to end must be gone. */
 const LAST_CALL = 9_000;
+/** Milliseconds that answers under way are waited for. */
+const PATIENCE = 5_000;
 /** Milliseconds between removals of sessions that have ended. */
 const SWEEP_EVERY = 60 * 60_000;
 
@@ -29,12 +31,14 @@ function listen(
   );
   const throttle = makeThrottle(config.redisUrl, log);
   const reader = makeNetworkReader({ script: config.parseThread, log });
+  const uploads = new UploadFolder(config.uploadFolder);
   const app = createApp(
     {
       config,
       database,
       log,
       throttle,
+      uploads,
       reader,
       demoAccounts: config.demo ? [...DEMO_ACCOUNTS] : null,
       secondsSinceJob: () => secondsSinceBeat(database.db),
@@ -48,9 +52,9 @@ function listen(
       .sweep()
       .catch((error: unknown) => log.warn({ err: error }, 'ended sessions were not removed'));
   }, SWEEP_EVERY);
-  removeAbandonedUploads(config.uploadFolder).catch((error: unknown) =>
-    log.warn({ err: error }, 'abandoned uploads were not removed'),
-  );
+  uploads
+    .removeAbandoned()
+    .catch((error: unknown) => log.warn({ err: error }, 'abandoned uploads were not removed'));
   const server = createServer(CONNECTION_LIMITS, app);
   server.once('error', (error) => {
     log.fatal({ err: error }, `cannot listen on ${config.host}:${config.port}`);
@@ -63,17 +67,23 @@ function listen(
     closing.abort();
     clearInterval(sweep);
     await closed(server);
+    await uploads.settled();
     await Promise.all([listener.close(), reader.close(), throttle.close()]);
     await database.close();
   };
 }
 
-/** Takes no more connections, and waits for the answers that are under way. */
-function closed(server: Server): Promise<void> {
-  return new Promise((resolve) => {
-    server.close(() => resolve());
+/**
+ * Takes no more connections and waits for the answers that are under way; an upload that is still
+ * coming in after `PATIENCE` is cut off, and its files go with it.
+ */
+async function closed(server: Server): Promise<void> {
+  const cut = setTimeout(() => server.closeAllConnections(), PATIENCE);
+  await new Promise((resolve) => {
+    server.close(resolve);
     server.closeIdleConnections();
   });
+  clearTimeout(cut);
 }
 
 function start(): void {

@@ -8,7 +8,6 @@ import type { Dependencies } from '../dependencies';
 import { notFound, parseBody } from '../http/parse';
 import { created, ok, route, SENT, type RouteMap } from '../http/route';
 import { presentDataset, presentRevision } from './presenter';
-import { withUpload } from './upload';
 import { createDataset, createRevision, datasetOf, datasetsOf } from './usecases';
 
 const oneDataset = z.strictObject({ workspaceId: z.uuid(), datasetId: z.uuid() });
@@ -20,7 +19,7 @@ type DatasetRoutes = Pick<
   'datasets' | 'createDataset' | 'dataset' | 'createRevision' | 'revision'
 >;
 
-export function datasetRoutes({ config, database: { db }, reader }: Dependencies): DatasetRoutes {
+export function datasetRoutes({ database: { db }, reader, uploads }: Dependencies): DatasetRoutes {
   return {
     datasets: route('datasets', {}, async ({ member }) =>
       ok({ datasets: (await datasetsOf(db, member)).map(presentDataset) }),
@@ -29,7 +28,7 @@ export function datasetRoutes({ config, database: { db }, reader }: Dependencies
       ok(presentDataset(await datasetOf(db, member, params.datasetId))),
     ),
     createDataset: route('createDataset', { body: 'multipart' }, ({ member, request }) =>
-      withUpload(request, config.uploadFolder, async (upload) => {
+      uploads.receive(request, async (upload) => {
         const fields = parseBody(createDatasetFields, upload.fields);
         const id = await createDataset(db, member, fields, await reader.read(upload));
         return created(presentDataset(await datasetOf(db, member, id)));
@@ -40,7 +39,7 @@ export function datasetRoutes({ config, database: { db }, reader }: Dependencies
       { params: oneDataset, body: 'multipart' },
       async ({ member, params, request }) => {
         await datasetOf(db, member, params.datasetId);
-        return withUpload(request, config.uploadFolder, async (upload) => {
+        return uploads.receive(request, async (upload) => {
           parseBody(noFields, upload.fields);
           await createRevision(db, member, params.datasetId, await reader.read(upload));
           return created(presentDataset(await datasetOf(db, member, params.datasetId)));

@@ -39,34 +39,50 @@ export interface Upload {
   readonly edgesPath: string;
 }
 
-/** Receives the form into `folder`, hands it to `use`, and removes the files whatever happens. */
-export async function withUpload<T>(
-  request: Request,
-  folder: string,
-  use: (upload: Upload) => Promise<T>,
-): Promise<T> {
-  if ((request.get('content-encoding') ?? 'identity') !== 'identity') throw uploadEncoded();
-  try {
-    const own = await mkdtemp(join(folder, PREFIX));
+/** The folder where uploads lie while they are read. */
+export class UploadFolder {
+  readonly #open = new Set<Promise<unknown>>();
+
+  constructor(private readonly folder: string) {}
+
+  /** Receives the form, hands it to `use`, and removes the files whatever happens. */
+  async receive<T>(request: Request, use: (upload: Upload) => Promise<T>): Promise<T> {
+    if ((request.get('content-encoding') ?? 'identity') !== 'identity') throw uploadEncoded();
+    const work = this.#receive(request, use);
+    this.#open.add(work);
+    try {
+      return await work;
+    } catch (error) {
+      const code = error instanceof Error && 'code' in error ? error.code : '';
+      throw code === 'ENOSPC' || code === 'EDQUOT' ? storageFull(error) : error;
+    } finally {
+      this.#open.delete(work);
+    }
+  }
+
+  async #receive<T>(request: Request, use: (upload: Upload) => Promise<T>): Promise<T> {
+    const own = await mkdtemp(join(this.folder, PREFIX));
     try {
       return await use(await receive(request, own, UPLOAD_LIMITS.fileBytes));
     } finally {
       await rm(own, { recursive: true, force: true });
     }
-  } catch (error) {
-    const code = error instanceof Error && 'code' in error ? error.code : '';
-    throw code === 'ENOSPC' || code === 'EDQUOT' ? storageFull(error) : error;
   }
-}
 
-/** Removes what servers that were killed left behind: uploads live for minutes, not for hours. */
-export async function removeAbandonedUploads(folder: string): Promise<void> {
-  for (const name of await readdir(folder)) {
-    if (!name.startsWith(PREFIX)) continue;
-    const own = join(folder, name);
-    const made = await stat(own).catch(() => null);
-    if (made !== null && Date.now() - made.mtimeMs > ABANDONED_AFTER) {
-      await rm(own, { recursive: true, force: true });
+  /** Resolves once no upload is open and none has left a file. */
+  async settled(): Promise<void> {
+    await Promise.allSettled([...this.#open]);
+  }
+
+  /** Removes what servers that were killed left behind: uploads live for minutes, not for hours. */
+  async removeAbandoned(): Promise<void> {
+    for (const name of await readdir(this.folder)) {
+      if (!name.startsWith(PREFIX)) continue;
+      const own = join(this.folder, name);
+      const made = await stat(own).catch(() => null);
+      if (made !== null && Date.now() - made.mtimeMs > ABANDONED_AFTER) {
+        await rm(own, { recursive: true, force: true });
+      }
     }
   }
 }

@@ -13,6 +13,7 @@ import { makeSessions } from '../../server/auth/sessions';
 import { makeThrottle, THROTTLE_LIMITS, type ThrottleLimits } from '../../server/auth/throttle';
 import { readConfig } from '../../server/config';
 import { makeNetworkReader } from '../../server/datasets/networkReader';
+import { UploadFolder } from '../../server/datasets/upload';
 import { DEMO_ACCOUNTS } from '../../server/demo/accounts';
 import { CONNECTION_LIMITS } from '../../server/http/connections';
 import { makeRunRoutes } from '../../server/runs/routes';
@@ -67,6 +68,7 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
       database,
       log,
       throttle,
+      uploads: new UploadFolder(config.uploadFolder),
       reader,
       demoAccounts: config.demo ? [...DEMO_ACCOUNTS] : null,
       secondsSinceJob: () => secondsSinceBeat(database.db),

@@ -7,6 +7,7 @@ import { createApp } from '../../server/app';
 import { makeSessions } from '../../server/auth/sessions';
 import { makeThrottle } from '../../server/auth/throttle';
 import { readConfig } from '../../server/config';
+import { UploadFolder } from '../../server/datasets/upload';
 import { makeRunRoutes } from '../../server/runs/routes';
 import type { Role } from '../../server/contract/enums';
 import type { Workshop } from './workshop';
@@ -31,6 +32,7 @@ export async function serve(workshop: Workshop): Promise<RunServer> {
       database: workshop.database,
       log,
       throttle,
+      uploads: new UploadFolder(config.uploadFolder),
       reader: { read: unused, close: () => Promise.resolve() },
       demoAccounts: null,
       secondsSinceJob: () => secondsSinceBeat(workshop.db),
