@@ -50,6 +50,12 @@ test('from an empty instance to a downloaded matrix', async ({
     await expect(benchPage.inspector).toContainText('Fifth post');
     await expect(benchPage.inspector).toContainText('Long rope');
     await expect(benchPage.similarity).toHaveText('0.50');
+    await expect(benchPage.inspector).toContainText('A loop that lived from 5 to 8 is gone.');
+    await expect(benchPage.dimensionRow(/^1 /)).toHaveText(/1\.5\s*1 of 1\s*1$/);
+    await expect(benchPage.dimensionRow(/^2 /)).toHaveText(/0\s*0 of 1\s*0$/);
+    await benchPage.clickCell(7, 8, 9);
+    await expect(benchPage.similarity).toHaveText('1.00');
+    await expect(benchPage.inspector).toContainText('No bar moves: the two may trade places.');
   });
 
   await test.step('communities are listed, and one becomes a group', async () => {

@@ -52,13 +52,17 @@ export class House {
     expect(answer.status(), await answer.text()).toBe(201);
   }
 
-  async dataset(workspaceId: string, name: string): Promise<Dataset> {
+  async dataset(
+    workspaceId: string,
+    name: string,
+    files = { nodes: NODES_CSV, edges: EDGES_CSV },
+  ): Promise<Dataset> {
     const answer = await this.request.post(`/api/workspaces/${workspaceId}/datasets`, {
       multipart: {
         name,
         description: 'Invented for a test.',
-        nodes: csvFile('nodes.csv', NODES_CSV),
-        edges: csvFile('edges.csv', EDGES_CSV),
+        nodes: csvFile('nodes.csv', files.nodes),
+        edges: csvFile('edges.csv', files.edges),
       },
     });
     expect(answer.status(), await answer.text()).toBe(201);

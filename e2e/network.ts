@@ -57,6 +57,25 @@ p2,p3
 p3,p9
 `;
 
+/**
+ * A network large enough that its run can be watched: `n` nodes arriving one after another, every
+ * pair joined with chance `density` by a linear congruential generator (Lehmer 1951; multiplier
+ * 48271 of Park, Miller and Stockmeyer 1993), so that it is the same every time.
+ */
+export function largeNetwork(n: number, density: number): { nodes: string; edges: string } {
+  const nodes = ['id,label,entry'];
+  const edges = ['source,target'];
+  let state = 20_311;
+  for (let i = 1; i <= n; i++) {
+    nodes.push(`b${i},Buoy ${i},${i}`);
+    for (let j = 1; j < i; j++) {
+      state = (state * 48_271) % 2_147_483_647;
+      if (state / 2_147_483_647 < density) edges.push(`b${j},b${i}`);
+    }
+  }
+  return { nodes: `${nodes.join('\n')}\n`, edges: `${edges.join('\n')}\n` };
+}
+
 /** A text as a file of a form. */
 export const csvFile = (name: string, text: string) => ({
   name,

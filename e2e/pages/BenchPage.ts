@@ -42,6 +42,19 @@ export class BenchPage {
     await expect(this.facts).toContainText(`${pairs} of ${pairs} pairs`);
   }
 
+  get progress(): Locator {
+    return this.page.getByRole('progressbar', { name: /^Run/ });
+  }
+
+  get stop(): Locator {
+    return this.page.getByRole('button', { name: /^Stop run/ });
+  }
+
+  /** The row of a dimension in the pair's table: distance, bars moved, Betti gap. */
+  dimensionRow(name: RegExp): Locator {
+    return this.inspector.getByRole('row', { name });
+  }
+
   /** Clicks the lozenge of two arrival positions of n, where the cloth's geometry puts it. */
   async clickCell(p: number, q: number, n: number): Promise<void> {
     await this.cloth.scrollIntoViewIfNeeded();

@@ -29,7 +29,7 @@ export const getRun = (workspaceId: string, runId: string): Promise<Run> =>
   requestJson(inWorkspace(workspaceId, 'runs', runId), run);
 
 export const stopRun = (workspaceId: string, runId: string): Promise<Run> =>
-  requestJson(inWorkspace(workspaceId, 'runs', runId, 'stop'), run, { method: 'POST', body: {} });
+  requestJson(inWorkspace(workspaceId, 'runs', runId, 'stop'), run, { method: 'POST' });
 
 export async function getRunBlock(
   workspaceId: string,
