@@ -26,9 +26,14 @@ import type { Network } from '../../jobs/engine/types';
 import { startWorker, type RunningWorker } from '../../jobs/worker';
 import { buildScripts, type Scripts } from './scripts';
 
-const POSTGRES =
-  process.env['HEDDLE_TEST_DATABASE_URL'] ?? 'postgres://heddle@127.0.0.1:55432/postgres';
-const REDIS = process.env['HEDDLE_TEST_REDIS_URL'] ?? 'redis://127.0.0.1:56379/8';
+function demanded(key: 'HEDDLE_TEST_DATABASE_URL' | 'HEDDLE_TEST_REDIS_URL'): string {
+  const value = process.env[key];
+  if (value) return value;
+  throw new Error(`${key} is not set: run npm test, which starts the services and sets it.`);
+}
+
+const POSTGRES = demanded('HEDDLE_TEST_DATABASE_URL');
+const REDIS = demanded('HEDDLE_TEST_REDIS_URL');
 
 /** The Redis database after the tests' own: emptied by a test that no other may run beside. */
 export const FLUSHABLE_REDIS = Object.assign(new URL(REDIS), {
@@ -65,6 +70,8 @@ export class Workshop {
     readonly database: Database,
     readonly listener: Listener,
     readonly redis: Redis,
+    /** With its password, if it has one. */
+    readonly redisUrl: string,
     readonly prefix: string,
     readonly scripts: Scripts,
     private readonly name: string,
@@ -80,7 +87,15 @@ export class Workshop {
     const listener = openListener(url, () => undefined);
     await listener.ready();
     const prefix = `test-${name}`;
-    return new Workshop(openDatabase({ url }), listener, redis, prefix, await buildScripts(), name);
+    return new Workshop(
+      openDatabase({ url }),
+      listener,
+      redis,
+      redisUrl,
+      prefix,
+      await buildScripts(),
+      name,
+    );
   }
 
   /** A further database without any table; dropped with this workshop. @returns its address */
@@ -107,10 +122,9 @@ export class Workshop {
   }
 
   environment(settings: Readonly<Record<string, string>> = {}): Record<string, string> {
-    const { host, port, db } = this.redis.options;
     return {
       DATABASE_URL: this.database.url,
-      REDIS_URL: `redis://${host}:${port}/${db}`,
+      REDIS_URL: this.redisUrl,
       HEDDLE_QUEUE_PREFIX: this.prefix,
       HEDDLE_THREAD: this.scripts.thread,
       HEDDLE_THREADS: '1',
