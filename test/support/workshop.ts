@@ -25,15 +25,11 @@ import { readConfig, type WorkerConfig } from '../../jobs/config';
 import type { Network } from '../../jobs/engine/types';
 import { startWorker, type RunningWorker } from '../../jobs/worker';
 import { buildScripts, type Scripts } from './scripts';
+import * as services from './services';
+import { needed } from './services';
 
-function demanded(key: 'HEDDLE_TEST_DATABASE_URL' | 'HEDDLE_TEST_REDIS_URL'): string {
-  const value = process.env[key];
-  if (value) return value;
-  throw new Error(`${key} is not set: run npm test, which starts the services and sets it.`);
-}
-
-const POSTGRES = demanded('HEDDLE_TEST_DATABASE_URL');
-const REDIS = demanded('HEDDLE_TEST_REDIS_URL');
+const POSTGRES = needed(services.POSTGRES, 'HEDDLE_TEST_DATABASE_URL');
+const REDIS = needed(services.REDIS, 'HEDDLE_TEST_REDIS_URL');
 
 /** The Redis database after the tests' own: emptied by a test that no other may run beside. */
 export const FLUSHABLE_REDIS = Object.assign(new URL(REDIS), {
