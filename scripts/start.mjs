@@ -26,7 +26,6 @@ async function stop() {
 
 async function services() {
   const { DATABASE_URL, REDIS_URL } = process.env;
-  if (!DATABASE_URL || !REDIS_URL) ensurePrograms({ forTests: false });
   const postgres = DATABASE_URL ? null : await startPostgres(stateDir, { durable: true });
   if (postgres) started.push(postgres.stop);
   const redis = REDIS_URL ? null : await startRedis(stateDir);
@@ -65,6 +64,7 @@ async function reachable(url) {
 }
 
 async function start() {
+  if (!process.env.DATABASE_URL || !process.env.REDIS_URL) ensurePrograms({ forTests: false });
   ensurePackages();
   const { address, demo, environment } = await instance(await services());
   await ensureBuilt({ spa: true });
