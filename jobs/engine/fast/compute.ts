@@ -3,7 +3,7 @@ import { BettiGap } from './betti-gap';
 import { InfiniteBirths } from './births';
 import { BottleneckSweep } from './bottleneck';
 import { Changes, type DimensionChanges } from './changes';
-import type { Foundation } from './foundation';
+import { QUIET, type Foundation } from './foundation';
 import { Overlay } from './overlay';
 import { RowComplex } from './row';
 import { RowSweep } from './row-sweep';
@@ -24,6 +24,8 @@ export class MatrixComputation {
 
   constructor(private readonly foundation: Foundation) {
     const { tables, recorded, scale, bars, pulse, links, zeroTests } = foundation;
+    // Whatever an earlier computation held has gone with it, except for the store, which has grown.
+    tables.budget.used = foundation.bytes + 4 * recorded.store.data.length;
     this.row = new RowComplex(tables, recorded, scale, pulse, zeroTests);
     this.changes = new Changes(tables.budget, tables.top, scale);
     this.overlay = new Overlay(
@@ -53,9 +55,22 @@ export class MatrixComputation {
     for (const p of rows) pairCount += nodeCount - 1 - p;
     const distances = new Float64Array(top * pairCount);
     const bettiGaps = new Int32Array(top * pairCount);
-    let pair = 0;
     pulse.begin(control);
-    pulse.look();
+    try {
+      pulse.look();
+      this.fill(rows, { pairCount, distances, bettiGaps });
+      pulse.look();
+    } finally {
+      pulse.begin(QUIET);
+    }
+    return { rows: Uint32Array.from(rows), pairCount, distances, bettiGaps };
+  }
+
+  private fill(rows: Uint32Array, results: Omit<RowResults, 'rows'>): void {
+    const { tables, pulse } = this.foundation;
+    const { nodeCount, top } = tables;
+    const { pairCount, distances, bettiGaps } = results;
+    let pair = 0;
     for (const p of rows) {
       this.beginRow(p);
       for (let q = p + 1; q < nodeCount; q++, pair++) {
@@ -70,8 +85,6 @@ export class MatrixComputation {
         pulse.tick(200);
       }
     }
-    pulse.look();
-    return { rows: Uint32Array.from(rows), pairCount, distances, bettiGaps };
   }
 
   beginRow(p: number): void {

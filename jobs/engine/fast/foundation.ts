@@ -8,6 +8,9 @@ import { makeScale, type Scale } from './scale';
 import { buildTables, type LabelOrder, type Tables } from './tables';
 import type { ZeroTests } from './zero-policy';
 
+/** Nobody asks to stop and nobody listens. */
+export const QUIET: Control = { shouldStop: () => false, onProgress: () => undefined };
+
 /** The recorded complex, reduced: what every row of the matrix starts from. */
 export interface Foundation {
   readonly tables: Tables;
@@ -17,6 +20,8 @@ export interface Foundation {
   /** Per dimension of columns; absent where zero columns are not told beforehand. */
   readonly links: readonly (LinkColumns | undefined)[];
   readonly pulse: Pulse;
+  /** Bytes held, the store of reduced columns not counted. */
+  readonly bytes: number;
   readonly zeroTests: ZeroTests;
 }
 
@@ -51,7 +56,9 @@ export function layFoundation(request: FoundationRequest): Foundation {
   const links = tables.levels.map((_, d) =>
     d >= 2 && zeroTests !== 'never' ? reduceLinks(tables, d, pulse) : undefined,
   );
-  return { tables, scale, recorded, bars, links, pulse, zeroTests };
+  pulse.begin(QUIET);
+  const bytes = tables.budget.used - 4 * recorded.store.data.length;
+  return { tables, scale, recorded, bars, links, pulse, bytes, zeroTests };
 }
 
 /** The recorded barcode. */
