@@ -18,6 +18,7 @@ const ENTRIES = {
   worker: 'jobs/main.ts',
   thread: 'jobs/pool/thread.ts',
   matrix: 'jobs/matrix.ts',
+  bench: 'jobs/benchmark/main.ts',
   seed: 'server/seed.ts',
   migrate: 'db/migrate.ts',
 };
