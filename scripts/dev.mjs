@@ -50,7 +50,7 @@ await asCommand(async () => {
     REDIS_URL: redis.url,
     PORT: String(port),
     HEDDLE_DEMO: '1',
-    HEDDLE_API: `http://127.0.0.1:${port}`,
+    HEDDLE_DEV_API: `http://127.0.0.1:${port}`,
     HEDDLE_PARSE_THREAD: join(root, 'dist/parseThread.js'),
     HEDDLE_THREAD: join(root, 'dist/thread.js'),
     HEDDLE_MAIL_DIR: join(stateDir, 'mail'),
