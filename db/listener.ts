@@ -1,7 +1,15 @@
 import pg from 'pg';
 
-/** `run_changed` carries a run id, `pair_answered` run id, p and q, `outbox_added` nothing. */
-export const CHANNELS = ['run_changed', 'pair_answered', 'outbox_added'] as const;
+/**
+ * `run_changed` carries a run id, `pair_answered` run id, p and q, `estimate_answered` revision id
+ * and highest dimension, `outbox_added` nothing.
+ */
+export const CHANNELS = [
+  'run_changed',
+  'pair_answered',
+  'estimate_answered',
+  'outbox_added',
+] as const;
 export type Channel = (typeof CHANNELS)[number];
 
 /** Receives the payload, or null after a lost connection: anything may have happened meanwhile. */

@@ -16,6 +16,9 @@ function sharedFloat64(source: Float64Array): Float64Array {
   return shared;
 }
 
+/** Which network, on which scale. */
+export type NetworkWanted = Pick<WorkRun, 'workspaceId' | 'revisionId' | 'scale'>;
+
 /** Revisions never change, so a network is read once; the latest few are kept, in shared memory. */
 export class Networks {
   readonly #kept = new Map<string, Promise<Network | null>>();
@@ -26,7 +29,7 @@ export class Networks {
   ) {}
 
   /** @returns the network on the run's scale, or null if its dataset was deleted. */
-  async of(run: WorkRun): Promise<Network | null> {
+  async of(run: NetworkWanted): Promise<Network | null> {
     const key = `${run.revisionId} ${run.scale}`;
     const found = this.#kept.get(key) ?? this.#read(run);
     this.#kept.delete(key);
@@ -42,7 +45,7 @@ export class Networks {
     }
   }
 
-  async #read({ workspaceId, revisionId, scale }: WorkRun): Promise<Network | null> {
+  async #read({ workspaceId, revisionId, scale }: NetworkWanted): Promise<Network | null> {
     const stored = await readNetwork(this.db, workspaceId, revisionId);
     if (!stored) return null;
     return {

@@ -2,6 +2,7 @@ import type { Db } from '../db/client';
 import { redispatchMails } from '../db/repositories/mails';
 import { askForBeat } from '../db/repositories/outbox';
 import { redispatchPairs } from '../db/repositories/pairDetails';
+import { redispatchEstimates } from '../db/repositories/revisionEstimates';
 import { listMissing } from '../db/repositories/runBlocks';
 import { beginNextAttempt, listSilent, type SilentRun } from '../db/repositories/runDispatch';
 import { failRun, type MailRule } from '../db/repositories/runWork';
@@ -15,7 +16,7 @@ export const MOST_ATTEMPTS = 25;
 const INTERVAL = 5_000;
 /** Seconds without a heartbeat after which nobody works on a run. */
 const SILENCE = 8;
-/** Seconds after which an unanswered swap or an unsent message is asked for again. */
+/** Seconds after which an unanswered question or an unsent message is asked for again. */
 const PAIR_LATE = 10;
 const MAIL_LATE = 120;
 /** Seconds between two beats. */
@@ -57,6 +58,7 @@ export class Reconciler {
   async #reconcile(): Promise<void> {
     await askForBeat(this.db, BEAT);
     await redispatchPairs(this.db, PAIR_LATE);
+    await redispatchEstimates(this.db, PAIR_LATE);
     await redispatchMails(this.db, MAIL_LATE);
     for (const run of await listSilent(this.db, SILENCE)) {
       if (await this.#isLost(run)) await tryAgain(this.db, run, this.mail);

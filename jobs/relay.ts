@@ -76,6 +76,10 @@ export class Relay {
         const pair = PAYLOADS.pair.parse(raw);
         return this.producer.add({ name: 'pair', id: dispatchId, payload: pair });
       }
+      case 'estimate': {
+        const estimate = PAYLOADS.estimate.parse(raw);
+        return this.producer.add({ name: 'estimate', id: dispatchId, payload: estimate });
+      }
       case 'mail': {
         const mail = PAYLOADS.mail.parse(raw);
         return this.producer.add({ name: 'mail', id: dispatchId, payload: mail });

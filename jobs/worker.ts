@@ -8,6 +8,7 @@ import { Activity } from './activity';
 import { ConfigurationError, type WorkerConfig } from './config';
 import { block, finish } from './handlers/block';
 import type { Context } from './handlers/context';
+import { estimate } from './handlers/estimate';
 import { mail, mailRule } from './handlers/mail';
 import { pair } from './handlers/pair';
 import { plan } from './handlers/plan';
@@ -34,6 +35,7 @@ const handlersOf = (context: Context): Handlers => ({
   block: (payload) => block(payload, context),
   finish: (payload) => finish(payload, context),
   pair: (payload) => pair(payload, context),
+  estimate: (payload) => estimate(payload, context),
   mail: (payload) => mail(payload, context),
   beat: () => beat(context.db),
 });

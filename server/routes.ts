@@ -11,6 +11,7 @@ import { workspaceRoutes } from './workspaces/routes';
 /** The rows of the access table that server/runs answers. */
 export type RunRoutes = Pick<
   RouteMap,
+  | 'runEstimate'
   | 'createRun'
   | 'run'
   | 'stopRun'

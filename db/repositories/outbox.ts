@@ -9,6 +9,7 @@ export type OutboxEntry =
   | { readonly kind: 'plan'; readonly payload: { runId: string; attempt: number } }
   | { readonly kind: 'blocks'; readonly payload: { runId: string; attempt: number } }
   | { readonly kind: 'pair'; readonly payload: { runId: string; p: number; q: number } }
+  | { readonly kind: 'estimate'; readonly payload: { revisionId: string; maxDimension: number } }
   | { readonly kind: 'mail'; readonly payload: { mailId: string } }
   | { readonly kind: 'beat'; readonly payload: Record<string, never> };
 

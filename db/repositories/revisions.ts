@@ -163,3 +163,16 @@ export type NodeRow = Awaited<ReturnType<typeof listNodes>>[number];
 function isRevision(scope: Scope, revisionId: string) {
   return and(eq(revisions.workspaceId, scope.workspaceId), eq(revisions.id, revisionId));
 }
+
+/** @returns whether the workspace has this revision. */
+export async function hasRevision(
+  db: Queryable,
+  scope: Scope,
+  revisionId: string,
+): Promise<boolean> {
+  const rows = await db
+    .select({ id: revisions.id })
+    .from(revisions)
+    .where(isRevision(scope, revisionId));
+  return rows.length > 0;
+}

@@ -6,4 +6,11 @@ export const scaleEnum = pgEnum('scale', SCALES);
 export const runStateEnum = pgEnum('run_state', RUN_STATES);
 export const entryUnitEnum = pgEnum('entry_unit', ENTRY_UNITS);
 export const groupOriginEnum = pgEnum('group_origin', GROUP_ORIGINS);
-export const outboxKindEnum = pgEnum('outbox_kind', ['plan', 'blocks', 'pair', 'mail', 'beat']);
+export const outboxKindEnum = pgEnum('outbox_kind', [
+  'plan',
+  'blocks',
+  'pair',
+  'mail',
+  'beat',
+  'estimate',
+]);

@@ -9,6 +9,7 @@ export * from './revisionNodes';
 export * from './runs';
 export * from './runBlocks';
 export * from './pairDetails';
+export * from './revisionEstimates';
 export * from './groups';
 export * from './outbox';
 export * from './mails';

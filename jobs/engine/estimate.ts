@@ -3,6 +3,12 @@ import { rowSeconds, setUpSeconds } from './cost';
 import { arrivalOrder, orderGraph, validateNetwork } from './graph';
 import type { Estimate, Limits, Network } from './types';
 
+/**
+ * The time is taken to lie between seconds / margin and seconds × margin. Common practice; cost.ts
+ * says on which graphs it held.
+ */
+export const ESTIMATE_MARGIN = 4;
+
 /** Bytes of tables and stored columns per clique. Common practice: fitted to measured peaks. */
 const BYTES_PER_CLIQUE = 120;
 const BYTES_PER_NODE = 4_000;

@@ -30,6 +30,7 @@ export type Task = {
   readonly control: Int32Array;
 } & (
   | { readonly kind: 'plan'; readonly secondsPerBlock: number }
+  | { readonly kind: 'estimate' }
   | { readonly kind: 'rows'; readonly rows: Uint32Array }
   | {
       readonly kind: 'pair';
@@ -43,7 +44,9 @@ export type ResultOf<K extends Task['kind']> = K extends 'plan'
   ? PlanResult
   : K extends 'rows'
     ? RowResults
-    : PairResult;
+    : K extends 'estimate'
+      ? Estimate
+      : PairResult;
 
 /** Errors do not keep their class on the way out of a thread: the outcome says what happened. */
 export type Outcome<R> =

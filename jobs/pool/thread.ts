@@ -57,6 +57,8 @@ function run(task: Task): ResultOf<Task['kind']> {
   switch (task.kind) {
     case 'plan':
       return plan(task, control);
+    case 'estimate':
+      return estimate(task.subject.network, task.subject.maxDimension, task.subject.limits);
     case 'rows':
       return computeRows(preparedFor(task.subject, control), task.rows, control);
     case 'pair':

@@ -16,6 +16,12 @@ export const PAYLOADS = {
   finish: z.strictObject({ v: version, runId: id, attempt }),
   /** Work one swap out in full, for somebody who waits. */
   pair: z.strictObject({ v: version, runId: id, p: position, q: position }),
+  /** Count what the matrices of a revision would need, for somebody who waits. */
+  estimate: z.strictObject({
+    v: version,
+    revisionId: id,
+    maxDimension: z.number().int().min(0).max(3),
+  }),
   /** Send one message. */
   mail: z.strictObject({ v: version, mailId: id }),
   /** Show that jobs are consumed. */
@@ -39,6 +45,7 @@ export const QUEUE_OF = {
   finish: 'runs',
   block: 'blocks',
   pair: 'pairs',
+  estimate: 'pairs',
   mail: 'notes',
   beat: 'notes',
 } as const satisfies Record<JobName, QueueName>;

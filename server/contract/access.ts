@@ -80,6 +80,12 @@ export const ROUTES = {
     access: EVERYONE,
     summary: 'Nodes and edges of a revision',
   },
+  runEstimate: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/estimate`,
+    access: EVERYONE,
+    summary: 'What a run of a revision would need',
+  },
   createRun: { method: 'post', path: `${W}/runs`, access: EDITORS, summary: 'Start a run' },
   run: { method: 'get', path: `${W}/runs/:runId`, access: EVERYONE, summary: 'One run' },
   stopRun: {

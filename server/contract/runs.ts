@@ -15,6 +15,36 @@ export const createRunRequest = z.strictObject({
 });
 export type CreateRunRequest = z.input<typeof createRunRequest>;
 
+/** GET …/revisions/:revision/estimate?maxDimension=0..3 */
+export const estimateQuery = z.strictObject({
+  maxDimension: z
+    .string()
+    .regex(new RegExp(`^[0-${MAX_DIMENSION}]$`), `Give a whole number from 0 to ${MAX_DIMENSION}.`)
+    .default(String(MAX_DIMENSION))
+    .transform(Number),
+});
+
+/** What a run of a revision would need up to one highest dimension D, counted before it is queued. */
+export const runEstimate = z.strictObject({
+  maxDimension: z.number().int().min(0).max(MAX_DIMENSION),
+  /** Cliques of 1, 2, .. D + 2 nodes; lower bounds unless `exact`. */
+  cliques: z.array(z.number().int().nonnegative()),
+  /** False where counting stopped at a cap. */
+  exact: z.boolean(),
+  pairs: z.number().int().nonnegative(),
+  /** Peak of one thread's tables. */
+  bytes: z.number().nonnegative(),
+  /** Seconds of one thread for the whole matrix. */
+  seconds: z.number().nonnegative(),
+  /** The time is between seconds / margin and seconds × margin. Common practice, fitted to measured runs. */
+  margin: z.number().min(1),
+  /** What the workers may list and hold. */
+  allowed: z.strictObject({ simplices: z.number(), bytes: z.number() }),
+  /** Why such a run is refused, with the number and the ways out; null where it may be started. */
+  refusal: z.string().nullable(),
+});
+export type RunEstimate = z.infer<typeof runEstimate>;
+
 export const run = z.strictObject({
   id: z.uuid(),
   workspaceId: z.uuid(),

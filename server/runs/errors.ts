@@ -31,6 +31,20 @@ export const notDone = (state: string) =>
 export const alreadyOver = (state: string) =>
   new Failure('conflict', 'runs.already_over', `The run is ${state} already; nothing was changed.`);
 
+/** The sentence says the number and the ways out. */
+export const tooLarge = (sentence: string) => new Failure('invalid', 'runs.too_large', sentence);
+
+export const estimateRefused = (sentence: string) =>
+  new Failure('conflict', 'estimates.refused', sentence);
+
+export const estimateLate = () =>
+  new Failure(
+    'unavailable',
+    'estimates.not_answered_yet',
+    'No worker has counted the cliques of this revision yet. It is asked for and not lost: ask again in a moment.',
+    { retryAfter: 5 },
+  );
+
 /** The worker's own sentence says what stood in the way. */
 export const pairRefused = (sentence: string) => new Failure('conflict', 'pairs.refused', sentence);
 

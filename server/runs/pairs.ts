@@ -12,6 +12,7 @@ import { listNodes } from '../../db/repositories/revisions';
 import type { Scope } from '../../db/repositories/scope';
 import { notFound } from '../http/parse';
 import { arrivalsOf } from './arrivals';
+import { bellFor } from './bell';
 import { pairLate, pairRefused } from './errors';
 import { requireRun } from './usecases';
 
@@ -90,7 +91,7 @@ async function answerTo(
   positions: Positions,
   signal: AbortSignal,
 ): Promise<PairAnswer> {
-  const bell = bellFor(listener, `${runId} ${positions.p} ${positions.q}`);
+  const bell = bellFor(listener, 'pair_answered', `${runId} ${positions.p} ${positions.q}`);
   try {
     let answer = await findAnswer(db, scope, runId, positions);
     if (answer === null) {
@@ -106,32 +107,4 @@ async function answerTo(
   } finally {
     bell.remove();
   }
-}
-
-/** Rings when this swap was answered, or when the listener may have missed it. */
-function bellFor(listener: Listener, name: string) {
-  let rings = 0;
-  let wake: (() => void) | null = null;
-  const remove = listener.subscribe('pair_answered', (payload) => {
-    if (payload !== null && payload !== name) return;
-    rings++;
-    wake?.();
-  });
-  return {
-    remove,
-    /** Resolves at the next ring, at once after an unheard one, or after the given milliseconds. */
-    async rung(milliseconds: number): Promise<void> {
-      if (rings === 0) {
-        await new Promise<void>((resolve) => {
-          const timer = setTimeout(resolve, milliseconds);
-          wake = () => {
-            clearTimeout(timer);
-            resolve();
-          };
-        });
-      }
-      wake = null;
-      rings = 0;
-    },
-  };
 }

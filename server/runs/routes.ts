@@ -2,7 +2,7 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import type { Response } from 'express';
 import { z } from 'zod';
-import { createRunRequest } from '#contract/runs';
+import { createRunRequest, estimateQuery } from '#contract/runs';
 import { csvLines, type Cell } from '../../formats/csv';
 import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable } from '../../formats/matrixTable';
 import { decodeBarcode } from '../../db/codecs/barcode';
@@ -17,6 +17,7 @@ import { notFound } from '../http/parse';
 import { created, ok, route, SENT } from '../http/route';
 import type { RunRoutes } from '../routes';
 import { notDone, notPlanned } from './errors';
+import { readEstimate } from './estimates';
 import { streamEvents } from './events';
 import { matrixRows, readBlockBytes } from './matrix';
 import { readPair } from './pairs';
@@ -30,6 +31,7 @@ const count = z
   .regex(/^\d{1,9}$/)
   .transform(Number);
 const oneRun = z.strictObject({ workspaceId: z.uuid(), runId: z.uuid() });
+const oneRevision = z.strictObject({ workspaceId: z.uuid(), revisionId: z.uuid() });
 const oneBlock = oneRun.extend({ block: count });
 const onePair = oneRun.extend({ a: count, b: count });
 
@@ -43,6 +45,12 @@ export const makeRunRoutes =
     return {
       createRun: route('createRun', { body: createRunRequest }, async ({ member, body, request }) =>
         created(await startRun(db, member, body, request.get('idempotency-key') ?? null)),
+      ),
+      runEstimate: route(
+        'runEstimate',
+        { params: oneRevision, query: estimateQuery },
+        async ({ member, params: { revisionId }, query: { maxDimension }, signal }) =>
+          ok(await readEstimate(db, listener, member, { revisionId, maxDimension }, signal)),
       ),
       run: route('run', { params: oneRun }, async ({ member, params }) =>
         ok(await readRun(db, member, params.runId)),

@@ -5,6 +5,7 @@ import { listLanded } from '../../db/repositories/runBlocks';
 import { createRun, findRun, stopRun, type RunView } from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import { notFound } from '../http/parse';
+import { requireRoom } from './estimates';
 import { alreadyOver, longKey, otherParameters } from './errors';
 import { presentRun } from './presenter';
 
@@ -26,6 +27,8 @@ export async function readRun(db: Db, scope: Scope, runId: string): Promise<Run>
 /**
  * Queues a run. The same key of the same person answers the same run, however often and however
  * many at once.
+ *
+ * @throws Failure `runs.too_large` where the revision's stored estimate is over the budget
  */
 export async function startRun(
   db: Db,
@@ -34,6 +37,7 @@ export async function startRun(
   idempotencyKey: string | null,
 ): Promise<Run> {
   if (idempotencyKey !== null && idempotencyKey.length > LONGEST_KEY) throw longKey();
+  await requireRoom(db, scope, request);
   const made = await createRun(db, scope, { ...request, idempotencyKey });
   switch (made.kind) {
     case 'no_revision':

@@ -3,10 +3,12 @@ import {
   pairDetail,
   recordedBarcode,
   run,
+  runEstimate,
   type CreateRunRequest,
   type PairDetail,
   type RecordedBarcode,
   type Run,
+  type RunEstimate,
 } from '#contract/runs';
 import { inWorkspace, requestBytes, requestJson } from './client';
 
@@ -24,6 +26,17 @@ export const createRun = (
     body,
     headers: { 'idempotency-key': idempotencyKey },
   });
+
+/** What a run up to this highest dimension would need; a worker counts it while the page waits. */
+export const getEstimate = (
+  workspaceId: string,
+  revisionId: string,
+  maxDimension: number,
+): Promise<RunEstimate> =>
+  requestJson(
+    `${inWorkspace(workspaceId, 'revisions', revisionId, 'estimate')}?maxDimension=${maxDimension}`,
+    runEstimate,
+  );
 
 export const getRun = (workspaceId: string, runId: string): Promise<Run> =>
   requestJson(inWorkspace(workspaceId, 'runs', runId), run);

@@ -3,7 +3,7 @@ import { defineStore } from 'pinia';
 import type { RunBrief } from '#contract/datasets';
 import type { RunState } from '#contract/enums';
 import type { ProgressEvent } from '#contract/progress';
-import type { CreateRunRequest, Run } from '#contract/runs';
+import type { CreateRunRequest, Run, RunEstimate } from '#contract/runs';
 import { followRun } from '../api/progress';
 import * as api from '../api/runs';
 
@@ -59,6 +59,12 @@ export const useRunsStore = defineStore('runs', () => {
   const start = (workspaceId: string, body: CreateRunRequest, key: string): Promise<Run> =>
     api.createRun(workspaceId, body, key);
 
+  const estimate = (
+    workspaceId: string,
+    revisionId: string,
+    maxDimension: number,
+  ): Promise<RunEstimate> => api.getEstimate(workspaceId, revisionId, maxDimension);
+
   async function stop(workspaceId: string, runId: string): Promise<void> {
     const run = await api.stopRun(workspaceId, runId);
     const known = progress.value[runId];
@@ -68,5 +74,5 @@ export const useRunsStore = defineStore('runs', () => {
   /** The latest known state of a run of a list. */
   const stateOf = (run: RunBrief): RunState => progress.value[run.id]?.state ?? run.state;
 
-  return { progress, follow, recall, start, stop, stateOf };
+  return { progress, follow, recall, start, estimate, stop, stateOf };
 });

@@ -120,6 +120,11 @@ function samples(world: World): Record<RouteName, Sample> {
       status: 200,
       parameters: () => Promise.resolve({ revisionId: world.revisionId }),
     },
+    // The stored answer of the worker is a refusal.
+    runEstimate: {
+      status: 409,
+      parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
     createRun: {
       status: 201,
       parameters: () => Promise.resolve({ inBody: world.revisionId }),

@@ -11,7 +11,7 @@ import { createRun } from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import { insertUser } from '../../db/repositories/users';
 import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
-import { pairDetails, runBlocks, runs } from '../../db/schema/index';
+import { pairDetails, revisionEstimates, runBlocks, runs } from '../../db/schema/index';
 import { createDataset } from '../../server/datasets/usecases';
 import type { ReadNetwork } from '../../server/datasets/readMessages';
 import type { TestDatabase } from './database';
@@ -93,7 +93,7 @@ export async function makeQueuedRun(db: Db, scope: Scope, revisionId: string): P
   return made.runId;
 }
 
-/** A run of three nodes that is done, with one block; the swap of the first two was refused. */
+/** A run of three nodes that is done, with one block; the swap of the first two and the estimate were refused. */
 export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
   const { workspaceId } = scope;
   const runId = await makeQueuedRun(db, scope, revisionId);
@@ -118,6 +118,10 @@ export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Pro
   });
   const failure = 'Not part of this test.';
   await db.insert(pairDetails).values({ workspaceId, runId, p: 0, q: 1, failure });
+  await db
+    .insert(revisionEstimates)
+    .values({ workspaceId, revisionId, maxDimension: 3, failure })
+    .onConflictDoNothing();
   return runId;
 }
 

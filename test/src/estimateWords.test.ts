@@ -1,0 +1,30 @@
+import { describe, expect, it } from 'vitest';
+import { cliqueWords, estimateWords, formatSpan } from '../../src/components/run/estimateWords';
+
+describe('what a run would need', () => {
+  it('names cliques by what they are called, larger ones by their size', () => {
+    expect(cliqueWords([46, 1, 52, 9, 0])).toBe(
+      '46 nodes, 1 edge, 52 triangles, 9 cliques of 4 nodes, 0 cliques of 5 nodes',
+    );
+  });
+
+  it('is a time with its range, and memory', () => {
+    const allowed = { simplices: 10, bytes: 10 };
+    const counted = { maxDimension: 0, cliques: [3, 2], exact: true, pairs: 3, bytes: 3 * 2 ** 20 };
+    const words = estimateWords({ ...counted, seconds: 0.4, margin: 4, allowed, refusal: null });
+    expect(words).toBe(
+      'Cliques: 3 nodes, 2 edges · about 0.4 s of one thread (0.1 s to 1.6 s) · about 3 MiB of memory',
+    );
+  });
+
+  it('times are told in the unit that suits', () => {
+    expect([0, 0.123, 89, 90, 3600, 7200].map(formatSpan)).toEqual([
+      'under 0.01 s',
+      '0.12 s',
+      '89 s',
+      '1.5 min',
+      '60 min',
+      '2 h',
+    ]);
+  });
+});
