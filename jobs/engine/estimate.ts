@@ -7,11 +7,11 @@ import type { Estimate, Limits, Network } from './types';
  * The time is taken to lie between seconds / margin and seconds × margin. Common practice; cost.ts
  * says on which graphs it held.
  */
-export const ESTIMATE_MARGIN = 4;
+export const ESTIMATE_MARGIN = 5;
 
 /** Bytes of tables and stored columns per clique. Common practice: fitted to measured peaks. */
-const BYTES_PER_CLIQUE = 120;
-const BYTES_PER_NODE = 4_000;
+const BYTES_PER_CLIQUE = 220;
+const BYTES_PER_NODE = 200;
 
 /**
  * What the whole matrix of a network needs, counted before anything is listed.
