@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray, sql } from 'drizzle-orm';
+import { and, eq, inArray, sql } from 'drizzle-orm';
 import type { Scale } from '#contract/enums';
 import type { Db, Queryable } from '../client';
 import { datasets, revisions, runs, users } from '../schema/index';
@@ -218,44 +218,4 @@ export async function stopRun(db: Db, scope: Scope, runId: string): Promise<bool
     if (stopped.length > 0) await announceRun(tx, runId);
     return stopped.length > 0;
   });
-}
-
-/** One line of a dataset's list of runs. */
-export interface RunBriefRow {
-  readonly id: string;
-  readonly datasetId: string;
-  readonly number: number;
-  readonly revisionNumber: number;
-  readonly scale: Scale;
-  readonly dimensions: number[];
-  readonly state: RunRow['state'];
-  readonly createdAt: Date;
-}
-
-/** The runs of a workspace or of one of its datasets, newest first. */
-export async function listRunBriefs(
-  db: Queryable,
-  scope: Scope,
-  datasetId?: string,
-): Promise<RunBriefRow[]> {
-  return db
-    .select({
-      id: runs.id,
-      datasetId: revisions.datasetId,
-      number: runs.number,
-      revisionNumber: revisions.number,
-      scale: runs.scale,
-      dimensions: runs.dimensions,
-      state: runs.state,
-      createdAt: runs.createdAt,
-    })
-    .from(runs)
-    .innerJoin(revisions, eq(revisions.id, runs.revisionId))
-    .where(
-      and(
-        eq(runs.workspaceId, scope.workspaceId),
-        datasetId === undefined ? undefined : eq(revisions.datasetId, datasetId),
-      ),
-    )
-    .orderBy(desc(runs.number));
 }
