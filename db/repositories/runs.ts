@@ -99,6 +99,11 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
   });
 }
 
+/** Whether this person has a run under the key already. */
+export async function hasRunUnderKey(db: Db, scope: Scope, key: string | null): Promise<boolean> {
+  return (await findByKey(db, scope, key)) !== null;
+}
+
 async function findByKey(db: Queryable, scope: Scope, key: string | null) {
   if (key === null) return null;
   const [row] = await db

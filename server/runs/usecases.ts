@@ -2,7 +2,13 @@ import type { z } from 'zod';
 import type { createRunRequest, Run } from '#contract/runs';
 import type { Db } from '../../db/client';
 import { listLanded } from '../../db/repositories/runBlocks';
-import { createRun, findRun, stopRun, type RunView } from '../../db/repositories/runs';
+import {
+  createRun,
+  findRun,
+  hasRunUnderKey,
+  stopRun,
+  type RunView,
+} from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import { notFound } from '../http/parse';
 import { requireRoom } from './estimates';
@@ -37,7 +43,8 @@ export async function startRun(
   idempotencyKey: string | null,
 ): Promise<Run> {
   if (idempotencyKey !== null && idempotencyKey.length > LONGEST_KEY) throw longKey();
-  await requireRoom(db, scope, request);
+  // A repeat starts nothing: it is answered whatever has been counted since.
+  if (!(await hasRunUnderKey(db, scope, idempotencyKey))) await requireRoom(db, scope, request);
   const made = await createRun(db, scope, { ...request, idempotencyKey });
   switch (made.kind) {
     case 'no_revision':

@@ -3,7 +3,7 @@ import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { redispatchEstimates } from '../../db/repositories/revisionEstimates';
 import { outbox, revisionEstimates } from '../../db/schema/index';
 import { problemSchema } from '../../server/contract/problems';
-import { runEstimate } from '../../server/contract/runs';
+import { run, runEstimate } from '../../server/contract/runs';
 import { readEstimate } from '../../server/runs/estimates';
 import { estimate } from '../../jobs/engine/index';
 import type { Network } from '../../jobs/engine/types';
@@ -42,10 +42,15 @@ describe('what a run would need, before it is started', () => {
     return {
       ask: (query: string, id = revisionId) =>
         fetch(`${base}/revisions/${id}/estimate${query}`, { headers: { cookie } }),
-      start: (dimensions: number[]) =>
+      start: (dimensions: number[], key: string = randomUUID()) =>
         fetch(`${base}/runs`, {
           method: 'POST',
-          headers: { cookie, origin: server.origin, 'content-type': 'application/json' },
+          headers: {
+            cookie,
+            origin: server.origin,
+            'content-type': 'application/json',
+            'idempotency-key': key,
+          },
           body: JSON.stringify({ revisionId, dimensions }),
         }),
     };
@@ -115,6 +120,20 @@ describe('what a run would need, before it is started', () => {
     expect((await start([0])).status).toBe(201);
     // Nobody has asked for this one: the engine’s own guard decides while it runs.
     expect((await start([2])).status).toBe(201);
+  });
+
+  test('found over the budget later does not refuse the repeat of a run that was started', async () => {
+    await workshop.endWorkers();
+    workshop.startWorker({ HEDDLE_MAX_MEGABYTES: '1' });
+    const { ask, start } = await visitorOf(await workshop.bring(completeMultipartite(12, 2)));
+    const key = randomUUID();
+    const first = run.parse(await (await start([3], key)).json());
+    const counted = runEstimate.parse(await (await ask('?maxDimension=3')).json());
+    expect(counted.refusal).not.toBeNull();
+    const repeated = await start([3], key);
+    expect(repeated.status).toBe(201);
+    expect(run.parse(await repeated.json()).id).toBe(first.id);
+    expect((await start([3])).status).toBe(422);
   });
 
   test('asked for by many at once is counted once; a lost job is asked for again', async () => {
