@@ -4,10 +4,16 @@ import { arrivalOrder, orderGraph, validateNetwork } from './graph';
 import type { Estimate, Limits, Network } from './types';
 
 /**
- * The time is taken to lie between seconds / margin and seconds × margin. Common practice; cost.ts
- * says on which graphs it held.
+ * The time is taken to lie between seconds / margin and seconds × margin plus the start-up. Common
+ * practice; cost.ts says on which graphs the margin held, measured on threads that had worked before.
  */
 export const ESTIMATE_MARGIN = 5;
+
+/**
+ * Seconds that a fresh thread may lose until its code is compiled. Common practice: 0.02 to 0.6 s more
+ * than on a warm thread were seen for nine graphs of 10 to 200 nodes at D = 3.
+ */
+export const ESTIMATE_START_UP = 1;
 
 /** Bytes of tables and stored columns per clique. Common practice: fitted to measured peaks. */
 const BYTES_PER_CLIQUE = 220;

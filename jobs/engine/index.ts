@@ -4,7 +4,7 @@
 export const ENGINE_VERSION = '1.0.0';
 
 export { arrivalOrder } from './graph';
-export { ESTIMATE_MARGIN, estimate } from './estimate';
+export { ESTIMATE_MARGIN, ESTIMATE_START_UP, estimate } from './estimate';
 export { planBlocks } from './plan';
 export { prepare, recordedBarcode, type Prepared } from './prepared';
 export { computeRows } from './rows';

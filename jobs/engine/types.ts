@@ -87,7 +87,7 @@ export interface Estimate {
   readonly pairs: number;
   /** Peak bytes of typed arrays of one thread. */
   readonly bytes: number;
-  /** Seconds of one thread on an ordinary machine; a rule of thumb. */
+  /** Seconds of one thread that has worked before, on an ordinary machine; a rule of thumb. */
   readonly seconds: number;
 }
 

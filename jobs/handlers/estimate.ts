@@ -1,5 +1,5 @@
 import { answerEstimate, claimEstimate } from '../../db/repositories/revisionEstimates';
-import { ESTIMATE_MARGIN } from '../engine/index';
+import { ESTIMATE_MARGIN, ESTIMATE_START_UP } from '../engine/index';
 import type { Payload } from '../queue/jobs';
 import type { Context } from './context';
 import { failureOf } from './outcome';
@@ -34,7 +34,12 @@ export async function estimate(
   switch (outcome.kind) {
     case 'finished':
       return answerEstimate(db, question, {
-        estimate: { ...outcome.result, margin: ESTIMATE_MARGIN, allowed: limits },
+        estimate: {
+          ...outcome.result,
+          margin: ESTIMATE_MARGIN,
+          startUp: ESTIMATE_START_UP,
+          allowed: limits,
+        },
       });
     case 'stopped':
       activity.handOverIfClosing();

@@ -34,10 +34,15 @@ export const runEstimate = z.strictObject({
   pairs: z.number().int().nonnegative(),
   /** Peak of one thread's tables. */
   bytes: z.number().nonnegative(),
-  /** Seconds of one thread for the whole matrix. */
+  /** Seconds of one warm thread for the whole matrix. */
   seconds: z.number().nonnegative(),
-  /** The time is between seconds / margin and seconds × margin. Common practice, fitted to measured runs. */
+  /**
+   * The time is between seconds / margin and seconds × margin + startUp. Common practice, fitted to
+   * measured runs.
+   */
   margin: z.number().min(1),
+  /** Seconds that a fresh thread may lose before its code is fast. */
+  startUp: z.number().nonnegative(),
   /** What the workers may list and hold. */
   allowed: z.strictObject({ simplices: z.number(), bytes: z.number() }),
   /** Why such a run is refused, with the number and the ways out; null where it may be started. */

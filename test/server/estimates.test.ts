@@ -68,6 +68,7 @@ describe('what a run would need, before it is started', () => {
         maxDimension,
         ...expected,
         margin: read.margin,
+        startUp: read.startUp,
         allowed: limits,
         refusal: null,
       });

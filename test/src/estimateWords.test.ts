@@ -4,16 +4,21 @@ import { cliqueWords, estimateWords, formatSpan } from '../../src/components/run
 describe('what a run would need', () => {
   it('names cliques by what they are called, larger ones by their size', () => {
     expect(cliqueWords([46, 1, 52, 9, 0])).toBe(
-      '46 nodes, 1 edge, 52 triangles, 9 cliques of 4 nodes, 0 cliques of 5 nodes',
+      '46 nodes, 1 edge, 52 triangles, 9 cliques of 4 nodes, none larger',
     );
+    expect(cliqueWords([3, 2])).toBe('3 nodes, 2 edges');
   });
 
-  it('is a time with its range, and memory', () => {
+  it('is a time with its range, starting up included, and memory', () => {
     const allowed = { simplices: 10, bytes: 10 };
     const counted = { maxDimension: 0, cliques: [3, 2], exact: true, pairs: 3, bytes: 3 * 2 ** 20 };
-    const words = estimateWords({ ...counted, seconds: 0.4, margin: 4, allowed, refusal: null });
+    const rest = { ...counted, margin: 4, startUp: 1, allowed, refusal: null };
+    const words = estimateWords({ ...rest, seconds: 0.4 });
     expect(words).toBe(
-      'Cliques: 3 nodes, 2 edges · about 0.4 s of one thread (0.1 s to 1.6 s) · about 3 MiB of memory',
+      'Cliques: 3 nodes, 2 edges · about 0.4 s of one thread (0.1 s to 2.6 s) · about 3 MiB of memory',
+    );
+    expect(estimateWords({ ...rest, seconds: 0.005 })).toBe(
+      'Cliques: 3 nodes, 2 edges · under 2 s of one thread · about 3 MiB of memory',
     );
   });
 

@@ -3,16 +3,17 @@ import { formatBytes, formatNoun } from '../../composables/localeFormat';
 
 const SIZES = ['node', 'edge', 'triangle'];
 
-/** "46 nodes, 108 edges, 52 triangles, 9 cliques of 4 nodes". */
+/** "46 nodes, 108 edges, 52 triangles, 9 cliques of 4 nodes, none larger". */
 export function cliqueWords(cliques: readonly number[]): string {
-  return cliques
-    .map((count, k) => {
-      const known = SIZES[k];
-      return known === undefined
-        ? `${formatNoun(count, 'clique')} of ${k + 1} nodes`
-        : formatNoun(count, known);
-    })
-    .join(', ');
+  const present = cliques.filter((count) => count > 0);
+  const words = present.map((count, k) => {
+    const known = SIZES[k];
+    return known === undefined
+      ? `${formatNoun(count, 'clique')} of ${k + 1} nodes`
+      : formatNoun(count, known);
+  });
+  // A part of a clique is a clique: after the first size without any there is none.
+  return [...words, ...(present.length < cliques.length ? ['none larger'] : [])].join(', ');
 }
 
 const digits = new Intl.NumberFormat(undefined, { maximumSignificantDigits: 2 });
@@ -25,12 +26,21 @@ export function formatSpan(seconds: number): string {
   return `${digits.format(seconds / 3600)} h`;
 }
 
+/** Seconds below which only the upper end is told: nobody plans by less, and starting up weighs most. */
+const SHORT = 2;
+
+function timeWords({ seconds, margin, startUp }: RunEstimate): string {
+  const most = seconds * margin + startUp;
+  if (most < SHORT) return `under ${formatSpan(SHORT)} of one thread`;
+  const range = `${formatSpan(seconds / margin)} to ${formatSpan(most)}`;
+  return `about ${formatSpan(seconds)} of one thread (${range})`;
+}
+
 /** What a run would need, in one line. */
-export function estimateWords({ cliques, seconds, margin, bytes }: RunEstimate): string {
-  const range = `${formatSpan(seconds / margin)} to ${formatSpan(seconds * margin)}`;
+export function estimateWords(estimate: RunEstimate): string {
   return [
-    `Cliques: ${cliqueWords(cliques)}`,
-    `about ${formatSpan(seconds)} of one thread (${range})`,
-    `about ${formatBytes(bytes)} of memory`,
+    `Cliques: ${cliqueWords(estimate.cliques)}`,
+    timeWords(estimate),
+    `about ${formatBytes(estimate.bytes)} of memory`,
   ].join(' · ');
 }
