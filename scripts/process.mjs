@@ -36,6 +36,25 @@ export async function endProcess(pid, signal, limit) {
   }
 }
 
+/** Ends every process of a group, named by its leader, and waits; past the limit they are killed. */
+export async function endGroup(leader, limit) {
+  const signalled = (signal) => {
+    try {
+      process.kill(-leader, signal);
+      return true;
+    } catch (error) {
+      if (error.code === 'ESRCH') return false;
+      throw error;
+    }
+  };
+  if (!signalled('SIGTERM')) return;
+  try {
+    await until('the processes end', limit, () => !signalled(0));
+  } catch {
+    signalled('SIGKILL');
+  }
+}
+
 /** A free loopback port: the one remembered in `file` if it is free, else a new one, remembered. */
 export async function freePort(file, preferred = 0) {
   const remembered = existsSync(file) ? Number(readFileSync(file, 'utf8')) : preferred;

@@ -7,7 +7,7 @@ import { root, stateDir } from './paths.mjs';
 import { asCommand, holdLock, PlainError, requireNode } from './plain.mjs';
 import { startPostgres } from './postgres.mjs';
 import { ensureBuilt, ensurePackages } from './prepare.mjs';
-import { endProcess, freePort } from './process.mjs';
+import { endGroup, freePort } from './process.mjs';
 import { ensurePrograms } from './programs.mjs';
 import { startRedis } from './redis.mjs';
 
@@ -24,12 +24,14 @@ async function endAll() {
 /** Runs a program with its output on screen; stopping ends it too. @returns its status */
 async function run(name, args, environment) {
   if (stopping) return 1;
+  // A process group of its own: npm and npx start further processes and do not take them along.
   const child = spawn(name, args, {
     cwd: root,
+    detached: true,
     stdio: 'inherit',
     env: { ...process.env, ...environment },
   });
-  started.push(() => endProcess(child.pid, 'SIGTERM', 30_000));
+  started.push(() => endGroup(child.pid, 30_000));
   const [status] = await once(child, 'exit');
   return status ?? 1;
 }
