@@ -7,6 +7,6 @@ export { arrivalOrder } from './graph';
 export { ESTIMATE_MARGIN, ESTIMATE_START_UP, estimate } from './estimate';
 export { planBlocks } from './plan';
 export { prepare, recordedBarcode, type Prepared } from './prepared';
-export { computeRows } from './rows';
+export { computePairs, computeRows } from './rows';
 export { similarity } from './similarity';
 export { swapDetail } from './swapDetail';

@@ -37,19 +37,33 @@ export interface Control {
   onProgress(pairsDone: number): void;
 }
 
-/**
- * Results of all pairs (p, q), q > p, of some rows p, in the order of the rows given and, within a
- * row, q ascending. Positions are arrival positions 0..n-1 (sorted by value, ties by node row).
- */
-export interface RowResults {
-  /** Arrival positions p, as asked for. */
+/** Pairs (p, q) of arrival positions 0..n-1 (sorted by value, ties by node row), row by row. */
+export interface PairChoice {
+  /** Positions p of the rows, in any order; one position may stand in several rows. */
   readonly rows: Uint32Array;
-  /** Number of pairs P = sum over rows of (n - 1 - p). */
+  /** Partners of row i are partners[starts[i]] .. partners[starts[i + 1] - 1]. Length rows + 1. */
+  readonly starts: Uint32Array;
+  /** Positions q, each later than its row's p and ascending within the row. Length P. */
+  readonly partners: Uint32Array;
+}
+
+/** Results of chosen pairs, in the order of the choice. */
+export interface PairResults {
+  /** Number of pairs P. */
   readonly pairCount: number;
   /** Exact bottleneck distances in the unit of f: dimension k of pair i at [k * P + i]. Length (D + 1) P. */
   readonly distances: Float64Array;
   /** Largest absolute differences of the Betti curves (bars): the same layout. */
   readonly bettiGaps: Int32Array;
+}
+
+/**
+ * Results of all pairs (p, q), q > p, of some rows p, in the order of the rows given and, within a
+ * row, q ascending: P = sum over rows of (n - 1 - p).
+ */
+export interface RowResults extends PairResults {
+  /** Arrival positions p, as asked for. */
+  readonly rows: Uint32Array;
 }
 
 /** One bar of each side, or one side only where the bar goes to the diagonal (index -1). */

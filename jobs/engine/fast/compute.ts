@@ -1,4 +1,5 @@
-import type { Control, RowResults } from '../types';
+import { wholeRows } from '../choice';
+import type { Control, PairChoice, PairResults, RowResults } from '../types';
 import { BettiGap } from './betti-gap';
 import { InfiniteBirths } from './births';
 import { BottleneckSweep } from './bottleneck';
@@ -49,42 +50,50 @@ export class MatrixComputation {
 
   /** All pairs (p, q), q > p, of the given rows. */
   rows(rows: Uint32Array, control: Control): RowResults {
+    const choice = wholeRows(rows, this.foundation.tables.nodeCount);
+    return { rows: Uint32Array.from(rows), ...this.pairs(choice, control) };
+  }
+
+  /** The chosen pairs; the choice is in order. */
+  pairs(choice: PairChoice, control: Control): PairResults {
     const { tables, pulse } = this.foundation;
-    const { nodeCount, top } = tables;
-    let pairCount = 0;
-    for (const p of rows) pairCount += nodeCount - 1 - p;
-    const distances = new Float64Array(top * pairCount);
-    const bettiGaps = new Int32Array(top * pairCount);
+    const pairCount = choice.partners.length;
+    const distances = new Float64Array(tables.top * pairCount);
+    const bettiGaps = new Int32Array(tables.top * pairCount);
+    const results = { pairCount, distances, bettiGaps };
     pulse.begin(control);
     try {
       pulse.look();
-      this.fill(rows, { pairCount, distances, bettiGaps });
+      choice.rows.forEach((p, i) => this.fillRow(p, i, choice, results));
       pulse.look();
     } finally {
       pulse.begin(QUIET);
     }
-    return { rows: Uint32Array.from(rows), pairCount, distances, bettiGaps };
+    return results;
   }
 
-  private fill(rows: Uint32Array, results: Omit<RowResults, 'rows'>): void {
+  private fillRow(p: number, i: number, choice: PairChoice, results: PairResults): void {
     const { tables, pulse } = this.foundation;
-    const { nodeCount, top } = tables;
-    const { pairCount, distances, bettiGaps } = results;
-    let pair = 0;
-    for (const p of rows) {
-      this.beginRow(p);
-      for (let q = p + 1; q < nodeCount; q++, pair++) {
-        this.swap(p, q);
-        for (let k = 0; k < top; k++) {
-          const changes = this.changes.dimensions[k]!;
-          if (changes.empty) continue;
-          distances[k * pairCount + pair] = this.distance(k, changes);
-          bettiGaps[k * pairCount + pair] = this.gap.of(changes);
-        }
-        pulse.pairsDone = pair + 1;
-        pulse.tick(200);
-      }
+    const { starts, partners } = choice;
+    const end = starts[i + 1]!;
+    if (starts[i] === end) return;
+    this.beginRow(p);
+    let q = p + 1;
+    for (let pair = starts[i]!; pair < end; pair++) {
+      for (; q < partners[pair]!; q++) this.advance(q);
+      this.swap(p, q++);
+      for (let k = 0; k < tables.top; k++) this.fillCell(k, pair, results);
+      pulse.pairsDone = pair + 1;
+      pulse.tick(200);
     }
+  }
+
+  private fillCell(k: number, pair: number, results: PairResults): void {
+    const changes = this.changes.dimensions[k]!;
+    if (changes.empty) return;
+    const cell = k * results.pairCount + pair;
+    results.distances[cell] = this.distance(k, changes);
+    results.bettiGaps[cell] = this.gap.of(changes);
   }
 
   beginRow(p: number): void {
