@@ -1,23 +1,57 @@
 import { RowSet } from './bitset';
+import type { Budget } from './budget';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import type { Tables } from './tables';
 
 /**
  * What becomes of the critical columns of one dimension d >= 2 of every star when they are reduced
- * among themselves by their part in the star alone: the homology of the links. Index as in
+ * among themselves by their part in the star alone: the homology of the links. Columns as in
  * `StarColumns` (free).
  *
  * A column that survives is non-zero in every swapped complex. One that vanishes equals, up to
  * earlier columns of the star, its part outside the star: a cycle of the link, of dimension d - 1.
+ *
+ * A reduction that no simplex with a takes part in is the same without a, and keeps its pivot row: a
+ * sum of earlier columns with that row as its latest would be one with a present, too.
  */
-export interface LinkColumns {
-  readonly vanishes: Uint8Array;
-  /** The cycle of column c: simplices of dimension d - 1 at start[c] .. start[c + 1] - 1 of cells. */
+export class LinkColumns {
+  /** Place (of stars of dimension d - 1) of the pivot row of a column that survives, else -1. */
+  readonly pivot: Int32Array;
+  /** Position of the latest node of sigma of that pivot row, -1 without one. */
+  readonly pivotLatest: Int32Array;
+  /** The column that claims the row at each place of the stars of dimension d - 1, -1 if none. */
+  readonly claimer: Int32Array;
+  /**
+   * Reduced column c: rows of the star by local index at start[c] .. middle[c] - 1 of items, its
+   * part outside, simplices of dimension d - 1, at middle[c] .. start[c + 1] - 1.
+   */
   readonly start: Int32Array;
-  readonly cells: Int32Array;
+  readonly middle: Int32Array;
+  items: Int32Array;
   /** Bit y of the bitset at c * words: node y is in the column or in anything added to it. */
   readonly touched: Int32Array;
+  readonly words: number;
+
+  constructor(budget: Budget, columnCount: number, rowCount: number, nodeCount: number) {
+    this.pivot = budget.none(columnCount);
+    this.pivotLatest = budget.none(columnCount);
+    this.claimer = budget.none(rowCount);
+    this.start = budget.int32(columnCount + 1);
+    this.middle = budget.int32(columnCount);
+    this.items = budget.int32(0);
+    this.words = (nodeCount + 31) >>> 5;
+    this.touched = budget.int32(columnCount * this.words);
+  }
+
+  /** True if node y is in column c or in anything added to it. */
+  touches(c: number, y: number): boolean {
+    return (this.touched[c * this.words + (y >>> 5)]! & (1 << (y & 31))) !== 0;
+  }
+
+  vanishes(c: number): boolean {
+    return this.pivot[c]! < 0;
+  }
 }
 
 /** Reduces the links in dimension d; O(sum of the links' own reductions). */
@@ -29,14 +63,8 @@ class LinkReduction {
   /** The column under reduction: rows of the star by local index, and its cells outside the star. */
   private readonly rows: RowSet;
   private readonly cells: RowSet;
-  /** Survivors of one star: rows and cells laid end to end. */
-  private readonly survivors: IntPool;
-  /** Per row (local index) 1 + the index of the survivor that claims it, 0 if none. */
-  private readonly claims: Int32Array;
-  /** Per survivor: start of its rows, of its cells, end, and its column. */
-  private readonly heads: number[] = [];
-  private readonly words: number;
-  private readonly found: IntPool;
+  private readonly items: IntPool;
+  private readonly links: LinkColumns;
 
   constructor(
     private readonly tables: Tables,
@@ -44,48 +72,43 @@ class LinkReduction {
     private readonly pulse: Pulse,
   ) {
     const { budget, levels, nodeCount } = tables;
-    const { start } = tables.stars[d - 1]!;
+    const { start, entry } = tables.stars[d - 1]!;
     let widest = 0;
     for (let x = 0; x < nodeCount; x++) widest = Math.max(widest, start[x + 1]! - start[x]!);
     this.rows = new RowSet(budget, widest);
     this.cells = new RowSet(budget, levels[d - 1]!.count);
-    this.survivors = new IntPool(budget);
-    this.claims = budget.int32(widest);
-    this.words = (nodeCount + 31) >>> 5;
-    this.found = new IntPool(budget);
+    this.items = new IntPool(budget);
+    const columnCount = tables.starColumns[d]!.free.entry.length;
+    this.links = new LinkColumns(budget, columnCount, entry.length, nodeCount);
   }
 
   run(): LinkColumns {
-    const { tables, d, found } = this;
+    const { tables, d, items, links, rows, cells } = this;
     const { free } = tables.starColumns[d]!;
-    const count = free.entry.length;
-    const result: LinkColumns = {
-      vanishes: tables.budget.uint8(count),
-      start: tables.budget.int32(count + 1),
-      cells: found.data,
-      touched: tables.budget.int32(count * this.words),
-    };
+    const star = tables.stars[d - 1]!;
     for (let x = 0; x < tables.nodeCount; x++) {
-      this.claims.fill(0);
-      this.heads.length = 0;
-      this.survivors.length = 0;
       for (let c = free.start[x]!; c < free.start[x + 1]!; c++) {
-        result.start[c] = found.length;
-        this.add(free.entry[c]!, c, result.touched);
-        if (this.reduce(x, c, result.touched)) this.keep(c);
-        else {
-          result.vanishes[c] = 1;
-          this.cells.drain(found);
+        links.start[c] = items.length;
+        this.add(free.entry[c]!, c);
+        const pivot = this.reduce(x, c);
+        if (pivot >= 0) {
+          links.pivot[c] = pivot;
+          links.pivotLatest[c] = star.latest[pivot]!;
+          links.claimer[pivot] = c;
         }
+        rows.drain(items);
+        links.middle[c] = items.length;
+        cells.drain(items);
       }
     }
-    result.start[count] = found.length;
-    return { ...result, cells: found.data };
+    links.start[free.entry.length] = items.length;
+    links.items = items.data;
+    return links;
   }
 
   /** Adds the boundary of x + sigma and notes its nodes as touched by column c. */
-  private add(entry: number, c: number, touched: Int32Array): void {
-    const { d } = this;
+  private add(entry: number, c: number): void {
+    const { d, links } = this;
     const { nodes, facets } = this.tables.levels[d]!;
     const { local } = this.tables.stars[d - 1]!;
     const rowNodes = this.tables.levels[d - 1]!.nodes;
@@ -93,7 +116,7 @@ class LinkReduction {
     const at = entry - (entry % (d + 1));
     for (let i = at; i <= at + d; i++) {
       const y = nodes[i]!;
-      touched[c * this.words + (y >>> 5)]! |= 1 << (y & 31);
+      links.touched[c * links.words + (y >>> 5)]! |= 1 << (y & 31);
       if (i === entry) {
         this.cells.toggle(facets[i]!);
         continue;
@@ -105,36 +128,26 @@ class LinkReduction {
     this.pulse.tick(2 * d);
   }
 
-  /** True if the column survives; its pivot row is then the top of `rows`. */
-  private reduce(x: number, c: number, touched: Int32Array): boolean {
-    const { rows, cells, heads, words, survivors, d } = this;
+  /** The place of the pivot row if the column survives, else -1. */
+  private reduce(x: number, c: number): number {
+    const { rows, cells, links, items, d } = this;
+    const { words, start, middle, touched } = links;
     const star = this.tables.stars[d - 1]!;
     for (;;) {
       const row = rows.top();
-      if (row < 0) return false;
-      const claim = this.claims[row]!;
-      if (claim > 0) {
-        const at = (claim - 1) * 4;
-        rows.toggleAll(survivors.data, heads[at]!, heads[at + 1]!);
-        cells.toggleAll(survivors.data, heads[at + 1]!, heads[at + 2]!);
-        const other = heads[at + 3]!;
+      if (row < 0) return -1;
+      const place = star.start[x]! + row;
+      const other = links.claimer[place]!;
+      if (other >= 0) {
+        rows.toggleAll(items.data, start[other]!, middle[other]!);
+        cells.toggleAll(items.data, middle[other]!, start[other + 1]!);
         for (let w = 0; w < words; w++) touched[c * words + w]! |= touched[other * words + w]!;
-        this.pulse.tick(heads[at + 2]! - heads[at]!);
+        this.pulse.tick(start[other + 1]! - start[other]!);
         continue;
       }
-      const union = star.firstUnion[star.start[x]! + row]!;
-      if (union < 0) return true;
-      this.add(union, c, touched);
+      const union = star.firstUnion[place]!;
+      if (union < 0) return place;
+      this.add(union, c);
     }
-  }
-
-  private keep(c: number): void {
-    const { rows, cells, heads, survivors } = this;
-    this.claims[rows.top()] = heads.length / 4 + 1;
-    heads.push(survivors.length);
-    rows.drain(survivors);
-    heads.push(survivors.length);
-    cells.drain(survivors);
-    heads.push(survivors.length, c);
   }
 }

@@ -1,5 +1,6 @@
 import { RowSet } from './bitset';
 import { ColumnHeap } from './heap';
+import type { LinkColumns } from './links';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
@@ -56,6 +57,7 @@ export class OverlayColumn {
     private readonly tables: Tables,
     private readonly recorded: Recorded,
     private readonly rowComplex: RowComplex,
+    private readonly links: readonly (LinkColumns | undefined)[],
     private readonly pulse: Pulse,
   ) {
     const { budget, levels, stars, top, columns } = tables;
@@ -126,10 +128,55 @@ export class OverlayColumn {
     this.pulse.tick(2 * d);
   }
 
-  /** Adds a cycle without a: simplices cells[from..to-1]. */
-  addCycle(cells: Int32Array, from: number, to: number): void {
-    for (let i = from; i < to; i++) this.toggleWithoutA(cells[i]!);
-    this.pulse.tick(to - from);
+  /** Adds column c of a star, reduced in its link: of a's star, or of b's and not touched by a. */
+  addLinkColumn(links: LinkColumns, c: number): void {
+    const { items, start, middle } = links;
+    const from = start[c]!;
+    const end = start[c + 1]!;
+    const rowsEnd = middle[c]!;
+    const ofA = this.tables.levels[this.dimension]!.nodes[this.tables.starColumns[this.dimension]!.free.entry[c]!] === this.p;
+    if (ofA) {
+      this.starA.toggleAll(items, from, rowsEnd);
+      for (let i = rowsEnd; i < end; i++) this.toggleWithoutA(items[i]!);
+    } else {
+      this.starB.toggleAll(items, from, rowsEnd);
+      this.rest.toggleAll(items, rowsEnd, end);
+    }
+    this.pulse.tick(end - from);
+  }
+
+  /**
+   * True if b's column `c` of dimension d, or the row that it is (`local`), is paired inside b's star
+   * whatever is around it: reduced in the link without a, to a row of its own time. Such a bar has no
+   * length, and the column is needed only where another one meets its row.
+   */
+  isSettledB(d: number, c: number, local: number): boolean {
+    const links = this.links[d];
+    if (links !== undefined && this.holdsB(d, links, c)) return true;
+    const above = d < this.tables.top ? this.links[d + 1] : undefined;
+    if (above === undefined) return false;
+    const claimer = above.claimer[this.tables.stars[d]!.start[this.q]! + local]!;
+    return claimer >= 0 && this.isBeforeQ(d + 1, claimer) && this.holdsB(d + 1, above, claimer);
+  }
+
+  private isBeforeQ(d: number, c: number): boolean {
+    return this.tables.starColumns[d]!.free.latest[c]! < this.q;
+  }
+
+  private holdsB(d: number, links: LinkColumns, c: number): boolean {
+    if (links.vanishes(c) || links.touches(c, this.p)) return false;
+    const latest = this.tables.starColumns[d]!.free.latest[c]!;
+    return latest <= this.p || latest === links.pivotLatest[c];
+  }
+
+  /** The same for a's star, all of which enters at q. */
+  isSettledA(d: number, c: number, local: number): boolean {
+    const links = this.links[d];
+    if (links !== undefined && !links.vanishes(c)) return true;
+    const above = d < this.tables.top ? this.links[d + 1] : undefined;
+    if (above === undefined) return false;
+    const claimer = above.claimer[this.tables.stars[d]!.start[this.p]! + local]!;
+    return claimer >= 0 && this.tables.starColumns[d + 1]!.free.latest[claimer]! <= this.q;
   }
 
   /** Starts from the reduced column of M. */
@@ -279,6 +326,14 @@ export class OverlayColumn {
       this.addStarA(union);
       return false;
     }
+    const links = this.links[d];
+    if (links !== undefined) {
+      const claimer = links.claimer[star.start[this.p]! + a]!;
+      if (claimer >= 0 && this.tables.starColumns[d]!.free.latest[claimer]! <= this.q) {
+        this.addLinkColumn(links, claimer);
+        return false;
+      }
+    }
     this.part = Part.StarOfA;
     this.row = a;
     return true;
@@ -296,6 +351,14 @@ export class OverlayColumn {
     if (union >= 0) {
       this.addStarB(union);
       return false;
+    }
+    const links = this.links[d];
+    if (links !== undefined) {
+      const claimer = links.claimer[this.tables.stars[d - 1]!.start[this.q]! + b]!;
+      if (claimer >= 0 && this.isBeforeQ(d, claimer) && this.holdsB(d, links, claimer)) {
+        this.addLinkColumn(links, claimer);
+        return false;
+      }
     }
     this.part = Part.StarOfB;
     this.row = b;

@@ -8,7 +8,7 @@ import type { Recorded } from './recorded';
 import type { RowComplex } from './row';
 import type { Pulse } from './pulse';
 import type { StarColumns } from './star-columns';
-import { StarZeros, Verdict } from './star-zeros';
+import { StarZeros } from './star-zeros';
 import type { Tables } from './tables';
 import type { ZeroTests } from './zero-policy';
 
@@ -32,7 +32,7 @@ export class Overlay {
     private readonly row: RowComplex,
     private readonly changes: Changes,
     private readonly pulse: Pulse,
-    links: readonly (LinkColumns | undefined)[],
+    private readonly links: readonly (LinkColumns | undefined)[],
     zeroTests: ZeroTests,
   ) {
     this.zeros = links.map((link, d) =>
@@ -45,7 +45,7 @@ export class Overlay {
             zeroTests,
           ),
     );
-    this.column = new OverlayColumn(tables, recorded, row, pulse);
+    this.column = new OverlayColumn(tables, recorded, row, links, pulse);
     this.active = tables.levels.map(() => ({
       columns: new IntPool(tables.budget, 64),
       until: new IntPool(tables.budget, 64),
@@ -121,6 +121,7 @@ export class Overlay {
     while (j < jEnd && singleNode[j]! < p) j++;
     this.zeros[d]?.begin();
     for (;;) {
+      while (i < iEnd && free.latest[i]! < q && column.isSettledB(d, i, free.local[i]!)) i++;
       const hasFree = i < iEnd && free.latest[i]! < q;
       const hasSingle = j < jEnd && singleNode[j] === p && single.latest[j]! < q;
       const takeSingle = hasSingle && (!hasFree || single.sigma[j]! < free.sigma[i]!);
@@ -143,22 +144,30 @@ export class Overlay {
     const entry = list.entry[k]!;
     // Without a it is the first union of its facet, hence paired for nothing.
     if (list.elder[k] === p || (d === 1 && entry === column.unionOfB)) return;
-    const { nodes } = tables.levels[d]!;
-    const at = entry - (entry % (d + 1));
-    for (let i = at; i <= at + d; i++) if (nodes[i] === p) return;
+    if (this.contains(d, entry, p)) return;
     const claimed = d < tables.top && column.claimB[d]![list.local[k]!]! >= column.base;
     if (!claimed) {
-      const zeros = list === tables.starColumns[d]!.free ? this.zeros[d] : undefined;
+      const links = list === tables.starColumns[d]!.free ? this.links[d] : undefined;
+      const known = links !== undefined && !links.touches(k, p);
+      const zeros = known && links.vanishes(k) ? this.zeros[d] : undefined;
       const before = this.pulse.work;
-      const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(k, p, time);
-      if (verdict === Verdict.Cycle) zeros!.addTo(column, k);
-      else if (verdict === Verdict.Unknown) column.addStarB(entry);
-      if (verdict !== Verdict.Zero && column.reduce(time, this.row.start[d]!.length, -1)) {
-        return this.settle(d, time);
+      const isZero = zeros?.isZero(k, time) === true;
+      if (!isZero) {
+        if (known) column.addLinkColumn(links, k);
+        else column.addStarB(entry);
+        if (column.reduce(time, this.row.start[d]!.length, -1)) return this.settle(d, time);
       }
-      zeros?.met(k, verdict === Verdict.Zero ? 0 : this.pulse.work - before);
+      zeros?.met(isZero ? 0 : this.pulse.work - before);
     }
     if (d < tables.top) changes.infinite(d, time, 1);
+  }
+
+  /** True if node x is in the simplex of an entry of dimension d. */
+  private contains(d: number, entry: number, x: number): boolean {
+    const { nodes } = this.tables.levels[d]!;
+    const at = entry - (entry % (d + 1));
+    for (let i = at; i <= at + d; i++) if (nodes[i] === x) return true;
+    return false;
   }
 
   /** A column of M that lost its pivot row: negative in M, perhaps positive now. */
@@ -178,25 +187,31 @@ export class Overlay {
     const { column, tables, changes } = this;
     const { p, q } = column;
     const { free } = tables.starColumns[d]!;
-    const zeros = this.zeros[d];
-    zeros?.begin();
+    this.zeros[d]?.begin();
     for (let i = free.start[p]!; i < free.start[p + 1]! && free.latest[i]! <= q; i++) {
+      if (column.isSettledA(d, i, free.local[i]!)) continue;
       const entry = free.entry[i]!;
       if (d === 1 && entry === column.unionOfA) continue;
       const claimed = d < tables.top && column.claimA[d]![free.local[i]!]! >= column.base;
-      if (!claimed) {
-        const before = this.pulse.work;
-        const verdict = zeros === undefined ? Verdict.Unknown : zeros.judge(i, -1, q);
-        if (verdict === Verdict.Cycle) zeros!.addTo(column, i);
-        else if (verdict === Verdict.Unknown) column.addStarA(entry);
-        if (verdict !== Verdict.Zero && column.reduce(q, this.row.start[d]!.length, -1)) {
-          this.settle(d, q);
-          continue;
-        }
-        zeros?.met(i, verdict === Verdict.Zero ? 0 : this.pulse.work - before);
-      }
-      if (d < tables.top) changes.infinite(d, q, 1);
+      if (!claimed && this.reduceOfA(d, i, entry)) this.settle(d, q);
+      else if (d < tables.top) changes.infinite(d, q, 1);
     }
+  }
+
+  /** True unless column i of a's star is zero. One that survives in a's link has been left out. */
+  private reduceOfA(d: number, i: number, entry: number): boolean {
+    const { column } = this;
+    const links = this.links[d];
+    const zeros = this.zeros[d];
+    const before = this.pulse.work;
+    const isZero = zeros?.isZero(i, column.q) === true;
+    if (!isZero) {
+      if (links === undefined) column.addStarA(entry);
+      else column.addLinkColumn(links, i);
+      if (column.reduce(column.q, this.row.start[d]!.length, -1)) return true;
+    }
+    zeros?.met(isZero ? 0 : this.pulse.work - before);
+    return false;
   }
 
   /**
