@@ -129,7 +129,7 @@ export class MatrixComputation {
     let sweep = this.bottlenecks[k];
     if (sweep === undefined || sweep.mostAdded < changes.addedCount) {
       const most = 2 * changes.addedCount + 64;
-      sweep?.release(tables.budget);
+      sweep?.release();
       sweep = new BottleneckSweep(bars.bars[k]!, scale.value, tables.budget, pulse, most);
       this.bottlenecks[k] = sweep;
     }

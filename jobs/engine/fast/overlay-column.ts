@@ -134,7 +134,10 @@ export class OverlayColumn {
     const from = start[c]!;
     const end = start[c + 1]!;
     const rowsEnd = middle[c]!;
-    const ofA = this.tables.levels[this.dimension]!.nodes[this.tables.starColumns[this.dimension]!.free.entry[c]!] === this.p;
+    const ofA =
+      this.tables.levels[this.dimension]!.nodes[
+        this.tables.starColumns[this.dimension]!.free.entry[c]!
+      ] === this.p;
     if (ofA) {
       this.starA.toggleAll(items, from, rowsEnd);
       for (let i = rowsEnd; i < end; i++) this.toggleWithoutA(items[i]!);

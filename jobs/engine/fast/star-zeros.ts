@@ -61,7 +61,12 @@ export class StarZeros {
   isZero(c: number, time: number): boolean {
     const { links, ready, test, annotation } = this;
     if (!ready) return false;
-    return test.isZero(links.items, links.middle[c]!, links.start[c + 1]!, annotation.deadAt[time]!);
+    return test.isZero(
+      links.items,
+      links.middle[c]!,
+      links.start[c + 1]!,
+      annotation.deadAt[time]!,
+    );
   }
 
   /** True if column c of M is zero at its turn. */
