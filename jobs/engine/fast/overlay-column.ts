@@ -209,6 +209,23 @@ export class OverlayColumn {
     this.pulse.tick(2 * (to - from));
   }
 
+  /** Reduces the part in b's star alone; true if nothing is left of it, the column a cycle of M. */
+  reduceWithinB(): boolean {
+    for (let b = this.starB.top(); b >= 0; b = this.starB.top()) {
+      if (this.stepStarB(b)) return false;
+    }
+    return true;
+  }
+
+  /** Moves a column that has no row in either star into `cells`. */
+  takeCycle(cells: IntPool): void {
+    this.rest.drain(cells);
+  }
+
+  addCycle(cells: IntPool): void {
+    this.rest.toggleAll(cells.data, 0, cells.length);
+  }
+
   /**
    * Adds reduced columns until the pivot row is free (true; see `part` and `row`) or the column is
    * zero (false). A holder of M is added if it comes before this column, that is if its position is

@@ -146,20 +146,34 @@ export class Overlay {
     if (list.elder[k] === p || (d === 1 && entry === column.unionOfB)) return;
     if (this.contains(d, entry, p)) return;
     const claimed = d < tables.top && column.claimB[d]![list.local[k]!]! >= column.base;
-    if (!claimed) {
-      const links = list === tables.starColumns[d]!.free ? this.links[d] : undefined;
-      const known = links !== undefined && !links.touches(k, p);
-      const zeros = known && links.vanishes(k) ? this.zeros[d] : undefined;
-      const before = this.pulse.work;
-      const isZero = zeros?.isZero(k, time) === true;
-      if (!isZero) {
-        if (known) column.addLinkColumn(links, k);
-        else column.addStarB(entry);
-        if (column.reduce(time, this.row.start[d]!.length, -1)) return this.settle(d, time);
-      }
-      zeros?.met(isZero ? 0 : this.pulse.work - before);
+    if (!claimed && this.reduceOfB(d, list, k, time)) this.settle(d, time);
+    else if (d < tables.top) changes.infinite(d, time, 1);
+  }
+
+  /** True unless column k of b's star is zero. */
+  private reduceOfB(d: number, list: StarColumns, k: number, time: number): boolean {
+    const { column, tables, pulse } = this;
+    const links = list === tables.starColumns[d]!.free ? this.links[d] : undefined;
+    const known = links !== undefined && !links.touches(k, column.p);
+    const zeros = known && !links.vanishes(k) ? undefined : this.zeros[d];
+    const before = pulse.work;
+    if (!known) column.addStarB(list.entry[k]!);
+    else if (zeros?.isZero(k, time) === true) {
+      zeros.met(0);
+      return false;
+    } else column.addLinkColumn(links, k);
+    if (
+      !known &&
+      zeros?.ready === true &&
+      column.reduceWithinB() &&
+      zeros.isZeroCycle(column, time)
+    ) {
+      zeros.met(0);
+      return false;
     }
-    if (d < tables.top) changes.infinite(d, time, 1);
+    if (column.reduce(time, this.row.start[d]!.length, -1)) return true;
+    zeros?.met(pulse.work - before);
+    return false;
   }
 
   /** True if node x is in the simplex of an entry of dimension d. */

@@ -1,6 +1,7 @@
 import type { Annotation } from './annotation';
 import type { LinkColumns } from './links';
-import type { IntPool } from './pool';
+import type { OverlayColumn } from './overlay-column';
+import { IntPool } from './pool';
 import type { Tables } from './tables';
 import type { ZeroTests } from './zero-policy';
 import { ZeroTest } from './zero-test';
@@ -11,8 +12,10 @@ import { ZeroTest } from './zero-test';
  * pair met in the last row. All counts repeat on every machine, and no result depends on them.
  */
 export class StarZeros {
-  private ready = false;
+  /** True if M is annotated for this row. */
+  ready = false;
   private readonly test: ZeroTest;
+  private readonly cells: IntPool;
   /** Zero columns met in this row. */
   private zeros = 0;
   /** Zero columns per pair met in the last row, -1 before the first. */
@@ -29,6 +32,7 @@ export class StarZeros {
     private readonly tests: ZeroTests,
   ) {
     this.test = new ZeroTest(annotation, tables.budget);
+    this.cells = new IntPool(tables.budget, 64);
   }
 
   /** Once per row p, after M has been reduced: annotates M if that costs less than it saves. */
@@ -67,6 +71,16 @@ export class StarZeros {
       links.start[c + 1]!,
       annotation.deadAt[time]!,
     );
+  }
+
+  /** The same for a column under reduction that is a cycle of M; it is emptied if it is zero. */
+  isZeroCycle(column: OverlayColumn, time: number): boolean {
+    const { cells } = this;
+    cells.length = 0;
+    column.takeCycle(cells);
+    if (this.test.isZero(cells.data, 0, cells.length, this.annotation.deadAt[time]!)) return true;
+    column.addCycle(cells);
+    return false;
   }
 
   /** True if column c of M is zero at its turn. */
