@@ -6,7 +6,14 @@ export const ENGINE_VERSION = '1.0.0';
 export { arrivalOrder } from './graph';
 export { ESTIMATE_MARGIN, ESTIMATE_START_UP, estimate } from './estimate';
 export { planBlocks } from './plan';
-export { prepare, recordedBarcode, type Prepared } from './prepared';
+export {
+  adoptPrepared,
+  prepare,
+  preparedData,
+  recordedBarcode,
+  type Prepared,
+  type PreparedData,
+} from './prepared';
 export { computePairs, computeRows } from './rows';
 export { similarity } from './similarity';
 export { swapDetail } from './swapDetail';

@@ -1,6 +1,14 @@
 import { countCliques, type CliqueCounts } from './cliques';
 import { MatrixComputation } from './fast/compute';
-import { layFoundation, recordedBars, type Foundation } from './fast/foundation';
+import type { Memory } from './fast/budget';
+import {
+  adoptFoundation,
+  foundationData,
+  layFoundation,
+  recordedBars,
+  type Foundation,
+  type FoundationData,
+} from './fast/foundation';
 import { arrivalOrder, orderGraph, validateNetwork, type OrderedGraph } from './graph';
 import { EngineLimitError, type Barcode, type Control, type Limits, type Network } from './types';
 
@@ -26,6 +34,7 @@ export interface Prepared {
  * order.
  *
  * @param maxDimension D, 0..3: cliques of up to D + 2 nodes take part
+ * @param memory `shared` where other threads are to use the tables (see `preparedData`)
  * @throws EngineInputError for a network that is not simple or not finite
  * @throws EngineLimitError past `limits`, with the number that broke it
  * @throws EngineStopped when `control` says so
@@ -35,6 +44,7 @@ export function prepare(
   maxDimension: number,
   limits: Limits,
   control: Control,
+  memory: Memory = 'own',
 ): Prepared {
   validateNetwork(network, maxDimension);
   const graph = orderGraph(network, arrivalOrder(network.values));
@@ -46,13 +56,45 @@ export function prepare(
     maxDimension,
     limits,
     control,
+    memory,
   });
+  const { nodeCount } = network;
+  return overFoundation({ nodeCount, maxDimension, values: graph.values, counts }, foundation);
+}
+
+/**
+ * A prepared network as plain data: posted to another thread, all that lies in shared memory (see
+ * `prepare`) is read there without a copy.
+ */
+export interface PreparedData {
+  readonly subject: PreparedSubject;
+  readonly foundation: FoundationData;
+}
+
+type PreparedSubject = Pick<Prepared, 'nodeCount' | 'maxDimension' | 'values' | 'counts'>;
+
+export function preparedData(prepared: Prepared): PreparedData {
+  const { nodeCount, maxDimension, values, counts, foundation } = prepared;
+  const { bySize, containing, latest, total, exact } = counts;
+  const plainCounts = { bySize, containing, latest, total, exact };
+  return {
+    subject: { nodeCount, maxDimension, values, counts: plainCounts },
+    foundation: foundationData(foundation),
+  };
+}
+
+/**
+ * The prepared network of another thread, with buffers for its own rows.
+ * @throws EngineLimitError if the tables are larger than `limits.bytes`
+ */
+export function adoptPrepared({ subject, foundation }: PreparedData, limits: Limits): Prepared {
+  return overFoundation(subject, adoptFoundation(foundation, limits));
+}
+
+function overFoundation(subject: PreparedSubject, foundation: Foundation): Prepared {
   let computation: MatrixComputation | null = null;
   return {
-    nodeCount: network.nodeCount,
-    maxDimension,
-    values: graph.values,
-    counts,
+    ...subject,
     foundation,
     get peakBytes() {
       return foundation.tables.budget.peak;

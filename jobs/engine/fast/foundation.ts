@@ -1,12 +1,27 @@
 import type { Barcode, Bars, Control, Limits } from '../types';
 import type { DimensionChanges } from './changes';
+import { Budget, type Memory } from './budget';
 import { reduceLinks, type LinkColumns } from './links';
+import { IntPool } from './pool';
 import { Pulse } from './pulse';
 import { reduceRecorded, type Recorded } from './recorded';
 import { readRecordedBars, type RankedBars, type RecordedBars } from './recorded-bars';
 import { makeScale, type Scale } from './scale';
 import { buildTables, type LabelOrder, type Tables } from './tables';
 import type { ZeroTests } from './zero-policy';
+
+/** A foundation as plain data, so that it can be posted; arrays in shared memory are not copied. */
+export interface FoundationData {
+  readonly tables: Omit<Tables, 'budget'>;
+  readonly scale: Scale;
+  readonly recorded: Omit<Recorded, 'store'>;
+  /** The reduced columns of K. */
+  readonly store: Int32Array;
+  readonly bars: RecordedBars;
+  readonly links: readonly (LinkColumns | undefined)[];
+  readonly bytes: number;
+  readonly zeroTests: ZeroTests;
+}
 
 /** Nobody asks to stop and nobody listens. */
 export const QUIET: Control = { shouldStop: () => false, onProgress: () => undefined };
@@ -37,6 +52,8 @@ export interface FoundationRequest {
   /** Which of several ways that give the same results; for tests and measurements. */
   readonly labels?: LabelOrder;
   readonly zeroTests?: ZeroTests;
+  /** `shared` where other threads are to use it. */
+  readonly memory?: Memory;
 }
 
 /**
@@ -44,10 +61,11 @@ export interface FoundationRequest {
  * @throws EngineLimitError past `limits`; EngineStopped when `control` says so
  */
 export function layFoundation(request: FoundationRequest): Foundation {
-  const { values, ends, maxDimension, limits, labels = 'best', zeroTests = 'auto' } = request;
+  const { values, ends, maxDimension, limits, memory = 'own' } = request;
+  const { labels = 'best', zeroTests = 'auto' } = request;
   const pulse = new Pulse(request.control);
   const tables = buildTables(
-    { nodeCount: values.length, ends, maxDimension, limits, labels },
+    { nodeCount: values.length, ends, maxDimension, limits, labels, memory },
     pulse,
   );
   const scale = makeScale(values);
@@ -59,6 +77,36 @@ export function layFoundation(request: FoundationRequest): Foundation {
   pulse.begin(QUIET);
   const bytes = tables.budget.used - 4 * recorded.store.data.length;
   return { tables, scale, recorded, bars, links, pulse, bytes, zeroTests };
+}
+
+export function foundationData(foundation: Foundation): FoundationData {
+  const { tables, scale, recorded, bars, links, bytes, zeroTests } = foundation;
+  const { nodeCount, top, levels, stars, starColumns, columns, byFirstChild, neighbours } = tables;
+  const { store, ...plainRecorded } = recorded;
+  return {
+    tables: { nodeCount, top, levels, stars, starColumns, columns, byFirstChild, neighbours },
+    scale,
+    recorded: plainRecorded,
+    store: store.data.subarray(0, store.length),
+    bars,
+    links,
+    bytes,
+    zeroTests,
+  };
+}
+
+/**
+ * A foundation over the tables of another thread, with an account of bytes and a store of columns of
+ * its own. The tables count in every thread's account, though they are there only once.
+ */
+export function adoptFoundation(data: FoundationData, limits: Limits): Foundation {
+  const budget = new Budget(limits);
+  budget.take(data.bytes);
+  const tables = { ...data.tables, budget };
+  const store = new IntPool(budget, data.store.length + 1024);
+  store.data.set(data.store);
+  store.length = data.store.length;
+  return { ...data, tables, recorded: { ...data.recorded, store }, pulse: new Pulse(QUIET) };
 }
 
 /** The recorded barcode. */

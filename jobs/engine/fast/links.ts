@@ -1,5 +1,4 @@
 import { RowSet } from './bitset';
-import type { Budget } from './budget';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import type { Tables } from './tables';
@@ -15,7 +14,7 @@ import type { Tables } from './tables';
  * A reduction that no simplex with a takes part in is the same without a, and keeps its pivot row: a
  * sum of earlier columns with that row as its latest would be one with a present, too.
  */
-export class LinkColumns {
+export interface LinkColumns {
   /** Place (of stars of dimension d - 1) of the pivot row of a column that survives, else -1. */
   readonly pivot: Int32Array;
   /** Position of the latest node of sigma of that pivot row, -1 without one. */
@@ -28,30 +27,19 @@ export class LinkColumns {
    */
   readonly start: Int32Array;
   readonly middle: Int32Array;
-  items: Int32Array;
+  readonly items: Int32Array;
   /** Bit y of the bitset at c * words: node y is in the column or in anything added to it. */
   readonly touched: Int32Array;
   readonly words: number;
+}
 
-  constructor(budget: Budget, columnCount: number, rowCount: number, nodeCount: number) {
-    this.pivot = budget.none(columnCount);
-    this.pivotLatest = budget.none(columnCount);
-    this.claimer = budget.none(rowCount);
-    this.start = budget.int32(columnCount + 1);
-    this.middle = budget.int32(columnCount);
-    this.items = budget.int32(0);
-    this.words = (nodeCount + 31) >>> 5;
-    this.touched = budget.int32(columnCount * this.words);
-  }
+/** True if node y is in column c or in anything added to it. */
+export function touches({ touched, words }: LinkColumns, c: number, y: number): boolean {
+  return (touched[c * words + (y >>> 5)]! & (1 << (y & 31))) !== 0;
+}
 
-  /** True if node y is in column c or in anything added to it. */
-  touches(c: number, y: number): boolean {
-    return (this.touched[c * this.words + (y >>> 5)]! & (1 << (y & 31))) !== 0;
-  }
-
-  vanishes(c: number): boolean {
-    return this.pivot[c]! < 0;
-  }
+export function vanishes({ pivot }: LinkColumns, c: number): boolean {
+  return pivot[c]! < 0;
 }
 
 /** Reduces the links in dimension d; O(sum of the links' own reductions). */
@@ -64,7 +52,7 @@ class LinkReduction {
   private readonly rows: RowSet;
   private readonly cells: RowSet;
   private readonly items: IntPool;
-  private readonly links: LinkColumns;
+  private readonly links: Omit<LinkColumns, 'items'>;
 
   constructor(
     private readonly tables: Tables,
@@ -79,7 +67,16 @@ class LinkReduction {
     this.cells = new RowSet(budget, levels[d - 1]!.count);
     this.items = new IntPool(budget);
     const columnCount = tables.starColumns[d]!.free.entry.length;
-    this.links = new LinkColumns(budget, columnCount, entry.length, nodeCount);
+    const words = (nodeCount + 31) >>> 5;
+    this.links = {
+      pivot: budget.none(columnCount),
+      pivotLatest: budget.none(columnCount),
+      claimer: budget.none(entry.length),
+      start: budget.int32(columnCount + 1),
+      middle: budget.int32(columnCount),
+      touched: budget.int32(columnCount * words),
+      words,
+    };
   }
 
   run(): LinkColumns {
@@ -102,8 +99,7 @@ class LinkReduction {
       }
     }
     links.start[free.entry.length] = items.length;
-    links.items = items.data;
-    return links;
+    return { ...links, items: items.data };
   }
 
   /** Adds the boundary of x + sigma and notes its nodes as touched by column c. */

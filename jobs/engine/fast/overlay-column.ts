@@ -1,6 +1,6 @@
 import { RowSet } from './bitset';
 import { ColumnHeap } from './heap';
-import type { LinkColumns } from './links';
+import { touches, vanishes, type LinkColumns } from './links';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
@@ -167,7 +167,7 @@ export class OverlayColumn {
   }
 
   private holdsB(d: number, links: LinkColumns, c: number): boolean {
-    if (links.vanishes(c) || links.touches(c, this.p)) return false;
+    if (vanishes(links, c) || touches(links, c, this.p)) return false;
     const latest = this.tables.starColumns[d]!.free.latest[c]!;
     return latest <= this.p || latest === links.pivotLatest[c];
   }
@@ -175,7 +175,7 @@ export class OverlayColumn {
   /** The same for a's star, all of which enters at q. */
   isSettledA(d: number, c: number, local: number): boolean {
     const links = this.links[d];
-    if (links !== undefined && !links.vanishes(c)) return true;
+    if (links !== undefined && !vanishes(links, c)) return true;
     const above = d < this.tables.top ? this.links[d + 1] : undefined;
     if (above === undefined) return false;
     const claimer = above.claimer[this.tables.stars[d]!.start[this.p]! + local]!;

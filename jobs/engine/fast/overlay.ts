@@ -1,6 +1,6 @@
 import { Annotation } from './annotation';
 import type { Changes } from './changes';
-import type { LinkColumns } from './links';
+import { touches, vanishes, type LinkColumns } from './links';
 import { OverlayColumn, Part } from './overlay-column';
 import { IntPool } from './pool';
 import type { RecordedBars } from './recorded-bars';
@@ -154,8 +154,8 @@ export class Overlay {
   private reduceOfB(d: number, list: StarColumns, k: number, time: number): boolean {
     const { column, tables, pulse } = this;
     const links = list === tables.starColumns[d]!.free ? this.links[d] : undefined;
-    const known = links !== undefined && !links.touches(k, column.p);
-    const zeros = known && !links.vanishes(k) ? undefined : this.zeros[d];
+    const known = links !== undefined && !touches(links, k, column.p);
+    const zeros = known && !vanishes(links, k) ? undefined : this.zeros[d];
     const before = pulse.work;
     if (!known) column.addStarB(list.entry[k]!);
     else if (zeros?.isZero(k, time) === true) {

@@ -1,5 +1,5 @@
 import type { Limits } from '../types';
-import { Budget } from './budget';
+import { Budget, type Memory } from './budget';
 import { collectColumns, type Columns } from './columns';
 import { labelGraph, labelsByDegree, labelsByPosition, type Labelled } from './labels';
 import { countCliques, listCliques, type CliqueCounts, type Level } from './levels';
@@ -49,11 +49,12 @@ export interface TableRequest {
   readonly maxDimension: number;
   readonly limits: Limits;
   readonly labels: LabelOrder;
+  readonly memory: Memory;
 }
 
 export function buildTables(request: TableRequest, pulse: Pulse): Tables {
   const { nodeCount, ends, maxDimension } = request;
-  const budget = new Budget(request.limits);
+  const budget = new Budget(request.limits, request.memory);
   const top = maxDimension + 1;
   const neighbours = adjacency(nodeCount, ends, budget);
   const { graph, counts } = chooseLabels(request, top, budget, pulse);
