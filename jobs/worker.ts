@@ -14,6 +14,7 @@ import { pair } from './handlers/pair';
 import { plan } from './handlers/plan';
 import { Networks } from './networks';
 import { openPool } from './pool/pool';
+import { TableShelf } from './pool/tableShelf';
 import { openConsumer, type Handlers } from './queue/consumer';
 import { openProducer } from './queue/producer';
 import { Reconciler } from './reconciler';
@@ -69,7 +70,8 @@ export function startWorker(config: WorkerConfig, log: Logger): RunningWorker {
   const connection = { redisUrl: config.redisUrl, prefix: config.queuePrefix, onError };
   const producer = openProducer(connection);
   const activity = new Activity(db, listener, onError);
-  const threads = { script, heapMegabytes: config.heapMegabytes, onError };
+  const shelf = new TableShelf();
+  const threads = { script, heapMegabytes: config.heapMegabytes, onError, shelf };
   const context: Context = {
     config,
     db,

@@ -1,6 +1,7 @@
+import type { PreparedData } from '../engine/index';
 import type { Barcode, Estimate, Limits, Network, PairDetail, RowResults } from '../engine/types';
 
-/** What a thread needs to prepare a run; it keeps the prepared tables between tasks of the run. */
+/** What a thread needs to prepare a run. */
 export interface Subject {
   /** Names the prepared tables: the same key always means the same network and dimension. */
   readonly key: string;
@@ -28,7 +29,10 @@ export type Task = {
   readonly subject: Subject;
   /** Shared: [0] is 1 once the task must stop, [1] counts finished pairs. */
   readonly control: Int32Array;
+  /** The prepared tables, in memory that all threads of the process share; null where not needed. */
+  readonly tables: PreparedData | null;
 } & (
+  | { readonly kind: 'prepare' }
   | { readonly kind: 'plan'; readonly secondsPerBlock: number }
   | { readonly kind: 'estimate' }
   | { readonly kind: 'rows'; readonly rows: Uint32Array }
@@ -40,13 +44,18 @@ export type Task = {
     }
 );
 
-export type ResultOf<K extends Task['kind']> = K extends 'plan'
-  ? PlanResult
-  : K extends 'rows'
-    ? RowResults
-    : K extends 'estimate'
-      ? Estimate
-      : PairResult;
+/** Kinds of tasks that may be asked for; `prepare` the pool asks for itself. */
+export type Asked = Exclude<Task['kind'], 'prepare'>;
+
+export type ResultOf<K extends Task['kind']> = K extends 'prepare'
+  ? PreparedData
+  : K extends 'plan'
+    ? PlanResult
+    : K extends 'rows'
+      ? RowResults
+      : K extends 'estimate'
+        ? Estimate
+        : PairResult;
 
 /** Errors do not keep their class on the way out of a thread: the outcome says what happened. */
 export type Outcome<R> =

@@ -1,18 +1,21 @@
 import {
   ENGINE_VERSION,
+  adoptPrepared,
   computeRows,
   estimate,
   planBlocks,
   prepare,
+  preparedData,
   recordedBarcode,
   similarity,
   swapDetail,
   type Prepared,
+  type PreparedData,
 } from '../engine/index';
 import { EngineInputError, EngineLimitError, EngineStopped, type Control } from '../engine/types';
-import type { Outcome, PairResult, PlanResult, ResultOf, Subject, Task } from './tasks';
+import type { Outcome, PairResult, PlanResult, ResultOf, Task } from './tasks';
 
-/** Prepared tables by subject, the latest used last. Two runs at a time share a thread well. */
+/** Prepared networks with this thread's own buffers, by subject, the latest used last. */
 const kept = new Map<string, Prepared>();
 const MOST_KEPT = 2;
 
@@ -23,22 +26,28 @@ function controlOf(control: Int32Array): Control {
   };
 }
 
-function preparedFor(subject: Subject, control: Control): Prepared {
+function preparedFor({ subject, tables }: Task): Prepared {
   const found = kept.get(subject.key);
   kept.delete(subject.key);
   if (!found) {
-    // Room first: the tables of one run may take most of what a thread is allowed.
+    // Room first: the buffers of one run may take most of what a thread is allowed.
     while (kept.size >= MOST_KEPT) kept.delete(kept.keys().next().value ?? '');
   }
-  const prepared = found ?? prepare(subject.network, subject.maxDimension, subject.limits, control);
+  if (!found && tables === null) throw new Error('A task came without the tables of its run.');
+  const prepared = found ?? adoptPrepared(tables!, subject.limits);
   kept.set(subject.key, prepared);
   return prepared;
 }
 
-function plan(task: Task & { kind: 'plan' }, control: Control): PlanResult {
+function prepareShared({ subject }: Task, control: Control): PreparedData {
+  const { network, maxDimension, limits } = subject;
+  return preparedData(prepare(network, maxDimension, limits, control, 'shared'));
+}
+
+function plan(task: Task & { kind: 'plan' }): PlanResult {
   const { network, maxDimension, limits } = task.subject;
   const estimated = estimate(network, maxDimension, limits);
-  const prepared = preparedFor(task.subject, control);
+  const prepared = preparedFor(task);
   return {
     engineVersion: ENGINE_VERSION,
     estimate: estimated,
@@ -47,22 +56,24 @@ function plan(task: Task & { kind: 'plan' }, control: Control): PlanResult {
   };
 }
 
-function pair(task: Task & { kind: 'pair' }, control: Control): PairResult {
-  const detail = swapDetail(preparedFor(task.subject, control), task.p, task.q);
+function pair(task: Task & { kind: 'pair' }): PairResult {
+  const detail = swapDetail(preparedFor(task), task.p, task.q);
   return { detail, similarity: similarity(detail.distances, detail.bound, task.dimensions) };
 }
 
 function run(task: Task): ResultOf<Task['kind']> {
   const control = controlOf(task.control);
   switch (task.kind) {
+    case 'prepare':
+      return prepareShared(task, control);
     case 'plan':
-      return plan(task, control);
+      return plan(task);
     case 'estimate':
       return estimate(task.subject.network, task.subject.maxDimension, task.subject.limits);
     case 'rows':
-      return computeRows(preparedFor(task.subject, control), task.rows, control);
+      return computeRows(preparedFor(task), task.rows, control);
     case 'pair':
-      return pair(task, control);
+      return pair(task);
   }
 }
 
