@@ -1,7 +1,8 @@
-import { countCliques } from './cliques';
-import { rowSeconds, setUpSeconds } from './cost';
+import { countCliques, type CliqueCounts } from './cliques';
+import { partSeconds, rowSeconds, setUpSeconds } from './cost';
 import { arrivalOrder, orderGraph, validateNetwork } from './graph';
-import type { Estimate, Limits, Network } from './types';
+import { countPairs, partnersOf } from './part';
+import type { Estimate, Limits, Network, Part } from './types';
 
 /**
  * The time is taken to lie between seconds / margin and seconds × margin plus the start-up. Common
@@ -20,21 +21,38 @@ const BYTES_PER_CLIQUE = 220;
 const BYTES_PER_NODE = 200;
 
 /**
- * What the whole matrix of a network needs, counted before anything is listed.
+ * What the matrix of a part needs, counted before anything is listed. Cliques and bytes are those of
+ * the whole matrix: the tables do not shrink with the pairs.
+ *
  * @param limits counting stops once more than `limits.simplices` cliques are found
- * @throws EngineInputError as `prepare`
+ * @throws EngineInputError as `prepare`, or for a part that names missing positions
  */
-export function estimate(network: Network, maxDimension: number, limits: Limits): Estimate {
-  validateNetwork(network, maxDimension);
+export function estimate(
+  network: Network,
+  maxDimension: number,
+  limits: Limits,
+  part: Part = { kind: 'whole' },
+): Estimate {
+  const counts = countNetwork(network, maxDimension, limits);
   const { nodeCount } = network;
-  const graph = orderGraph(network, arrivalOrder(network.values));
-  const counts = countCliques(graph, maxDimension + 2, limits.simplices);
-  const rows = rowSeconds(counts);
-  return {
+  const base = {
     cliques: Array.from(counts.bySize),
     exact: counts.exact,
-    pairs: (nodeCount * (nodeCount - 1)) / 2,
     bytes: BYTES_PER_CLIQUE * counts.total + BYTES_PER_NODE * nodeCount,
-    seconds: rows.reduce((sum, seconds) => sum + seconds, setUpSeconds(counts)),
   };
+  if (part.kind === 'whole') {
+    const rows = rowSeconds(counts).reduce((sum, seconds) => sum + seconds, 0);
+    const pairs = (nodeCount * (nodeCount - 1)) / 2;
+    return { ...base, pairs, seconds: setUpSeconds(counts) + rows };
+  }
+  const partners = partnersOf(part, nodeCount);
+  const seconds = setUpSeconds(counts) + partSeconds(counts, partners);
+  return { ...base, pairs: countPairs(partners), seconds };
+}
+
+/** Cliques of up to D + 2 nodes. @throws EngineInputError as `prepare` */
+export function countNetwork(network: Network, maxDimension: number, limits: Limits): CliqueCounts {
+  validateNetwork(network, maxDimension);
+  const graph = orderGraph(network, arrivalOrder(network.values));
+  return countCliques(graph, maxDimension + 2, limits.simplices);
 }

@@ -5,7 +5,8 @@ export const ENGINE_VERSION = '1.0.0';
 
 export { arrivalOrder } from './graph';
 export { ESTIMATE_MARGIN, ESTIMATE_START_UP, estimate } from './estimate';
-export { planBlocks } from './plan';
+export { countPairs, partnersOf, remainderOf, type Partners } from './part';
+export { planBlocks, planPairs, type Block } from './plan';
 export {
   adoptPrepared,
   prepare,
@@ -17,3 +18,4 @@ export {
 export { computePairs, computeRows } from './rows';
 export { similarity } from './similarity';
 export { swapDetail } from './swapDetail';
+export { waysOut } from './ways';

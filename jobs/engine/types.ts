@@ -47,6 +47,22 @@ export interface PairChoice {
   readonly partners: Uint32Array;
 }
 
+/** Which pairs of arrival positions a run covers. */
+export type Part =
+  | { readonly kind: 'whole' }
+  /** |p - q| is at most so many positions. */
+  | { readonly kind: 'within'; readonly positions: number }
+  /** The intervals [starts[p], ends[p]] by arrival position, in the unit of the entries, overlap. */
+  | { readonly kind: 'overlapping'; readonly starts: Float64Array; readonly ends: Float64Array }
+  | {
+      readonly kind: 'chosen';
+      /** First and last position of a stretch whose pairs are all taken. */
+      readonly windows: readonly (readonly [number, number])[];
+      /** Positions of which every pair is taken. */
+      readonly nodes: readonly number[];
+      readonly pairs: readonly (readonly [number, number])[];
+    };
+
 /** Results of chosen pairs, in the order of the choice. */
 export interface PairResults {
   /** Number of pairs P. */
@@ -92,7 +108,7 @@ export interface PairDetail {
   readonly realising: readonly number[];
 }
 
-/** What a whole matrix would need, counted before it is run. */
+/** What the matrix of a part would need, counted before it is run. */
 export interface Estimate {
   /** Number of cliques with 1, 2, .. D + 2 nodes; counting stops at the cap. */
   readonly cliques: readonly number[];
@@ -103,6 +119,22 @@ export interface Estimate {
   readonly bytes: number;
   /** Seconds of one thread that has worked before, on an ordinary machine; a rule of thumb. */
   readonly seconds: number;
+}
+
+/** What a run may need at most. */
+export interface Budget extends Limits {
+  /** Seconds of one thread, by the estimate before and by the clock of whoever runs it. */
+  readonly seconds: number;
+}
+
+/** What would fit where an estimate is over the budget; each alone, and only what does fit. */
+export interface Ways {
+  /** The highest lower D whose same pairs fit. */
+  readonly dimension: number | null;
+  /** The most arrival positions within which all pairs fit; null also where cliques are the limit. */
+  readonly within: number | null;
+  /** The pairs of overlapping intervals; null also where cliques are the limit. */
+  readonly overlapping: { readonly pairs: number; readonly seconds: number } | null;
 }
 
 export class EngineInputError extends Error {
