@@ -6,10 +6,15 @@ import type { Delimiter, Encoding } from '../../../formats/sources/types';
 
 const bytes = (text: string) => new TextEncoder().encode(text);
 
+interface Settings {
+  encoding?: Encoding;
+  lineCharacters?: number;
+}
+
 const read = (
   source: string | Uint8Array,
   delimiter: Delimiter = ',',
-  { encoding = 'utf-8' as Encoding, lineCharacters = 10_000 } = {},
+  { encoding = 'utf-8', lineCharacters = 10_000 }: Settings = {},
 ) =>
   [
     ...recordsOf(typeof source === 'string' ? bytes(source) : source, {
@@ -85,9 +90,7 @@ describe('records of a delimited file', () => {
   test('line ends and characters that straddle two blocks are read whole', () => {
     const text = `${'é'.repeat(40_000)}\r\n`.repeat(5);
     const found = read(text, ',', { lineCharacters: 100_000 });
-    expect(found.map(([line, cells]) => [line, cells?.[0]?.length])).toEqual(
-      [1, 2, 3, 4, 5].map((line) => [line, 40_000]),
-    );
+    expect(found).toEqual([1, 2, 3, 4, 5].map((line) => [line, ['é'.repeat(40_000)]]));
     const carriage = `${'a'.repeat(65_535)}\r\nb`;
     expect(read(carriage, ',', { lineCharacters: 100_000 }).map(([line]) => line)).toEqual([1, 2]);
   });
