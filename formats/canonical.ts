@@ -10,7 +10,11 @@ const FORM = 'heddle network 1';
  * the same network in the same node order give the same hash, whatever the order and direction of
  * their edges.
  */
-export function contentHash({ nodes, edges, entryUnit }: Omit<ReadNetwork, 'report'>): string {
+export function contentHash({
+  nodes,
+  edges,
+  entryUnit,
+}: Omit<ReadNetwork, 'report' | 'weights'>): string {
   const hash = createHash('sha256');
   hash.update(`${JSON.stringify([FORM, entryUnit, nodes.length, edges.length / 2])}\n`);
   for (const node of nodes) {

@@ -36,6 +36,12 @@ export interface ReadNetwork {
   readonly nodes: readonly NetworkNode[];
   /** u32[2 m]: node rows of the ends of each edge, lower row first, edges ascending. */
   readonly edges: Uint32Array;
+  /**
+   * f64[m]: the weight of each edge, the largest where several rows were folded, NaN where the file
+   * gives none; null without a weight column. No part of the content hash: weights change neither
+   * order nor complex, which edges they leave in does.
+   */
+  readonly weights: Float64Array | null;
   readonly entryUnit: EntryUnit;
   readonly report: ImportCounts;
 }

@@ -69,6 +69,8 @@ export interface Question {
   readonly file: string;
   readonly column: string | null;
   readonly text: string;
+  /** Whether there is no network until it is answered. */
+  readonly blocking: boolean;
   /** Cells that raise it, as written. */
   readonly examples: readonly string[];
 }
