@@ -1,6 +1,5 @@
 import type { Budget } from './budget';
 import type { DimensionChanges } from './changes';
-import { lowerBound } from './sort';
 
 /** Births per block of the range maxima. */
 const BLOCK = 16;
@@ -17,6 +16,8 @@ const SHORT_RUN = 2 * BLOCK;
 export class InfiniteBirths {
   /** X: the recorded births, ascending, as values of f. */
   private readonly births: Float64Array;
+  /** Number of recorded births below each rank. */
+  private readonly bornAt: Int32Array;
   /** Per c, made when first needed: sparse table of the maxima of whole blocks of k. */
   private readonly tables: (Float64Array[] | undefined)[] = [];
   /** Births that wait, from `head` on. */
@@ -27,12 +28,15 @@ export class InfiniteBirths {
 
   /** @param ranks birth ranks of the recorded infinite bars, ascending; `value`: f by rank */
   constructor(
-    private readonly ranks: Int32Array,
+    ranks: Int32Array,
     private readonly value: Float64Array,
     private readonly budget: Budget,
   ) {
     this.births = budget.float64(ranks.length);
     ranks.forEach((rank, k) => (this.births[k] = value[rank]!));
+    this.bornAt = budget.int32(value.length + 1);
+    for (const rank of ranks) this.bornAt[rank + 1]!++;
+    for (let r = 0; r < value.length; r++) this.bornAt[r + 1]! += this.bornAt[r]!;
     this.queue = budget.float64(256);
   }
 
@@ -43,7 +47,7 @@ export class InfiniteBirths {
     let i = 0;
     for (let t = 0; t < rankCount; t++) {
       const rank = ranks[t]!;
-      const next = lowerBound(this.ranks, this.ranks.length, rank);
+      const next = this.bornAt[rank]!;
       if (waiting !== 0) this.passRun(i, next);
       i = next;
       const sign = Math.sign(counts[t]!);

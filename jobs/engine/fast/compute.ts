@@ -24,7 +24,7 @@ export class MatrixComputation {
   private readonly births: readonly InfiniteBirths[];
 
   constructor(private readonly foundation: Foundation) {
-    const { tables, recorded, scale, bars, pulse, links, zeroTests } = foundation;
+    const { tables, recorded, scale, bars, pulse, links, settled, zeroTests } = foundation;
     // Whatever an earlier computation held has gone with it, except for the store, which has grown.
     tables.budget.used = foundation.bytes + 4 * recorded.store.data.length;
     this.row = new RowComplex(tables, recorded, scale, pulse, zeroTests);
@@ -37,6 +37,7 @@ export class MatrixComputation {
       this.changes,
       pulse,
       links,
+      settled,
       zeroTests,
     );
     this.sweeps = bars.events.map(

@@ -7,6 +7,7 @@ import { Pulse } from './pulse';
 import { reduceRecorded, type Recorded } from './recorded';
 import { readRecordedBars, type RankedBars, type RecordedBars } from './recorded-bars';
 import { makeScale, type Scale } from './scale';
+import { settleColumns, type SettledColumns } from './settled';
 import { buildTables, type LabelOrder, type Tables } from './tables';
 import type { ZeroTests } from './zero-policy';
 
@@ -19,6 +20,7 @@ export interface FoundationData {
   readonly store: Int32Array;
   readonly bars: RecordedBars;
   readonly links: readonly (LinkColumns | undefined)[];
+  readonly settled: readonly (SettledColumns | undefined)[];
   readonly bytes: number;
   readonly zeroTests: ZeroTests;
 }
@@ -34,6 +36,7 @@ export interface Foundation {
   readonly bars: RecordedBars;
   /** Per dimension of columns; absent where zero columns are not told beforehand. */
   readonly links: readonly (LinkColumns | undefined)[];
+  readonly settled: readonly (SettledColumns | undefined)[];
   readonly pulse: Pulse;
   /** Bytes held, the store of reduced columns not counted. */
   readonly bytes: number;
@@ -74,13 +77,14 @@ export function layFoundation(request: FoundationRequest): Foundation {
   const links = tables.levels.map((_, d) =>
     d >= 2 && zeroTests !== 'never' ? reduceLinks(tables, d, pulse) : undefined,
   );
+  const settled = tables.levels.map((_, d) => settleColumns(tables, links, d));
   pulse.begin(QUIET);
   const bytes = tables.budget.used - 4 * recorded.store.data.length;
-  return { tables, scale, recorded, bars, links, pulse, bytes, zeroTests };
+  return { tables, scale, recorded, bars, links, settled, pulse, bytes, zeroTests };
 }
 
 export function foundationData(foundation: Foundation): FoundationData {
-  const { tables, scale, recorded, bars, links, bytes, zeroTests } = foundation;
+  const { tables, scale, recorded, bars, links, settled, bytes, zeroTests } = foundation;
   const { nodeCount, top, levels, stars, starColumns, columns, byFirstChild, neighbours } = tables;
   const { store, ...plainRecorded } = recorded;
   return {
@@ -90,6 +94,7 @@ export function foundationData(foundation: Foundation): FoundationData {
     store: store.data.subarray(0, store.length),
     bars,
     links,
+    settled,
     bytes,
     zeroTests,
   };

@@ -1,6 +1,6 @@
 import { RowSet } from './bitset';
 import { ColumnHeap } from './heap';
-import { touches, vanishes, type LinkColumns } from './links';
+import { touches, type LinkColumns } from './links';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
@@ -148,38 +148,20 @@ export class OverlayColumn {
     this.pulse.tick(end - from);
   }
 
-  /**
-   * True if b's column `c` of dimension d, or the row that it is (`local`), is paired inside b's star
-   * whatever is around it: reduced in the link without a, to a row of its own time. Such a bar has no
-   * length, and the column is needed only where another one meets its row.
-   */
-  isSettledB(d: number, c: number, local: number): boolean {
-    const links = this.links[d];
-    if (links !== undefined && this.holdsB(d, links, c)) return true;
-    const above = d < this.tables.top ? this.links[d + 1] : undefined;
-    if (above === undefined) return false;
-    const claimer = above.claimer[this.tables.stars[d]!.start[this.q]! + local]!;
-    return claimer >= 0 && this.isBeforeQ(d + 1, claimer) && this.holdsB(d + 1, above, claimer);
-  }
-
-  private isBeforeQ(d: number, c: number): boolean {
-    return this.tables.starColumns[d]!.free.latest[c]! < this.q;
-  }
-
-  private holdsB(d: number, links: LinkColumns, c: number): boolean {
-    if (vanishes(links, c) || touches(links, c, this.p)) return false;
+  /** The column of b's star that its link pairs with row `local` of the star, -1 if a or time part them. */
+  private holderInB(d: number, links: LinkColumns, local: number): number {
+    const { p, q } = this;
+    const c = links.claimer[this.tables.stars[d - 1]!.start[q]! + local]!;
+    if (c < 0) return -1;
     const latest = this.tables.starColumns[d]!.free.latest[c]!;
-    return latest <= this.p || latest === links.pivotLatest[c];
+    if (latest >= q || (latest > p && latest !== links.pivotLatest[c])) return -1;
+    return touches(links, c, p) ? -1 : c;
   }
 
-  /** The same for a's star, all of which enters at q. */
-  isSettledA(d: number, c: number, local: number): boolean {
-    const links = this.links[d];
-    if (links !== undefined && !vanishes(links, c)) return true;
-    const above = d < this.tables.top ? this.links[d + 1] : undefined;
-    if (above === undefined) return false;
-    const claimer = above.claimer[this.tables.stars[d]!.start[this.p]! + local]!;
-    return claimer >= 0 && this.tables.starColumns[d + 1]!.free.latest[claimer]! <= this.q;
+  /** The same for a's star. */
+  private holderInA(d: number, links: LinkColumns, local: number): number {
+    const c = links.claimer[this.tables.stars[d - 1]!.start[this.p]! + local]!;
+    return c >= 0 && this.tables.starColumns[d]!.free.latest[c]! <= this.q ? c : -1;
   }
 
   /** Starts from the reduced column of M. */
@@ -347,12 +329,10 @@ export class OverlayColumn {
       return false;
     }
     const links = this.links[d];
-    if (links !== undefined) {
-      const claimer = links.claimer[star.start[this.p]! + a]!;
-      if (claimer >= 0 && this.tables.starColumns[d]!.free.latest[claimer]! <= this.q) {
-        this.addLinkColumn(links, claimer);
-        return false;
-      }
+    const holder = links === undefined ? -1 : this.holderInA(d, links, a);
+    if (holder >= 0) {
+      this.addLinkColumn(links!, holder);
+      return false;
     }
     this.part = Part.StarOfA;
     this.row = a;
@@ -373,12 +353,10 @@ export class OverlayColumn {
       return false;
     }
     const links = this.links[d];
-    if (links !== undefined) {
-      const claimer = links.claimer[this.tables.stars[d - 1]!.start[this.q]! + b]!;
-      if (claimer >= 0 && this.isBeforeQ(d, claimer) && this.holdsB(d, links, claimer)) {
-        this.addLinkColumn(links, claimer);
-        return false;
-      }
+    const holder = links === undefined ? -1 : this.holderInB(d, links, b);
+    if (holder >= 0) {
+      this.addLinkColumn(links!, holder);
+      return false;
     }
     this.part = Part.StarOfB;
     this.row = b;

@@ -7,6 +7,7 @@ import type { RecordedBars } from './recorded-bars';
 import type { Recorded } from './recorded';
 import type { RowComplex } from './row';
 import type { Pulse } from './pulse';
+import { isSettledA, isSettledB, type SettledColumns } from './settled';
 import type { StarColumns } from './star-columns';
 import { StarZeros } from './star-zeros';
 import type { Tables } from './tables';
@@ -33,6 +34,7 @@ export class Overlay {
     private readonly changes: Changes,
     private readonly pulse: Pulse,
     private readonly links: readonly (LinkColumns | undefined)[],
+    private readonly settled: readonly (SettledColumns | undefined)[],
     zeroTests: ZeroTests,
   ) {
     this.zeros = links.map((link, d) =>
@@ -120,8 +122,11 @@ export class Overlay {
     const jEnd = single.start[q + 1]!;
     while (j < jEnd && singleNode[j]! < p) j++;
     this.zeros[d]?.begin();
+    const settled = this.settled[d];
     for (;;) {
-      while (i < iEnd && free.latest[i]! < q && column.isSettledB(d, i, free.local[i]!)) i++;
+      if (settled !== undefined) {
+        while (i < iEnd && free.latest[i]! < q && isSettledB(settled, i, p, q)) i++;
+      }
       const hasFree = i < iEnd && free.latest[i]! < q;
       const hasSingle = j < jEnd && singleNode[j] === p && single.latest[j]! < q;
       const takeSingle = hasSingle && (!hasFree || single.sigma[j]! < free.sigma[i]!);
@@ -202,8 +207,9 @@ export class Overlay {
     const { p, q } = column;
     const { free } = tables.starColumns[d]!;
     this.zeros[d]?.begin();
+    const settled = this.settled[d];
     for (let i = free.start[p]!; i < free.start[p + 1]! && free.latest[i]! <= q; i++) {
-      if (column.isSettledA(d, i, free.local[i]!)) continue;
+      if (settled !== undefined && isSettledA(settled, i, q)) continue;
       const entry = free.entry[i]!;
       if (d === 1 && entry === column.unionOfA) continue;
       const claimed = d < tables.top && column.claimA[d]![free.local[i]!]! >= column.base;
