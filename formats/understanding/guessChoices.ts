@@ -1,0 +1,239 @@
+import { isDateLike, isMissing, isNumberLike } from '../sources/cellKinds';
+import { EDGE_WORDS, named, NODE_WORDS, wordOf } from '../sources/columnWords';
+import type { RawSource, RawTable } from '../sources/types';
+import { IssueList } from '../issues';
+import type { EdgeColumns, ImportChoices, NodeColumns, OrderKind, Question } from './choices';
+import { dayQuestion } from './ordering';
+import { pickTables, type PickedTable } from './tables';
+import { TimeScale } from './timeScale';
+
+/** Rows that the guesses about times look at. */
+const LOOKED_AT = 20_000;
+
+/** Guesses what each column is, where the order comes from and how times are read; and what has to be asked. */
+export function guessChoices(sources: readonly RawSource[]): {
+  choices: ImportChoices;
+  questions: readonly Question[];
+} {
+  const { nodes, edges } = pickTables(sources, new IssueList());
+  const columns = {
+    nodes: nodes ? guessNodeColumns(nodes.table) : NO_NODE_COLUMNS,
+    edges: edges ? guessEdgeColumns(edges.table) : NO_EDGE_COLUMNS,
+  };
+  const kind = guessOrder(columns);
+  const decimal = sources.some(({ reading }) => reading.decimal === ',') ? ',' : '.';
+  const timed = timeColumnOf(kind, nodes, edges, columns);
+  const scale = timed ? scaleOf(timed, decimal) : null;
+  const choices: ImportChoices = {
+    columns,
+    order: { kind },
+    dayOrder: scale?.dayOrder ?? null,
+    years: 'numbers',
+    decimal,
+    tolerance: null,
+    missing: 'refuse',
+    weights: { kind: 'all' },
+  };
+  const questions = [
+    ...(kind === 'rows' ? orderQuestion(nodes, edges) : []),
+    ...(timed && scale ? dayQuestion(timed.file, timed.column, scale.ambiguous) : []),
+    ...(timed ? yearQuestion(timed) : []),
+    ...(timed && kind === 'column' ? missingQuestion(timed) : []),
+  ];
+  return { choices, questions };
+}
+
+const NO_NODE_COLUMNS: NodeColumns = {
+  id: null,
+  label: null,
+  entry: null,
+  earliest: null,
+  latest: null,
+};
+const NO_EDGE_COLUMNS: EdgeColumns = { source: null, target: null, weight: null, time: null };
+
+function guessNodeColumns(table: RawTable): NodeColumns {
+  const left = new Set(table.columns);
+  const take = (column: string | null): string | null => {
+    if (column !== null) left.delete(column);
+    return column;
+  };
+  const byName = (words: readonly string[]) => named([...left], words);
+  const earliest = take(byName(NODE_WORDS.earliest));
+  const latest = take(byName(NODE_WORDS.latest));
+  const id = take(byName(NODE_WORDS.id) ?? distinctColumn(table, left));
+  const entry = take(
+    byName(NODE_WORDS.entry.filter((word) => entryFits(table, left, word))) ??
+      timeColumn(table, left),
+  );
+  const label = take(byName(NODE_WORDS.label) ?? worded(left, 'label'));
+  return { id, label, entry, earliest, latest };
+}
+
+/** A name that only may be the entry (t, order, day) is taken where its cells are times. */
+function entryFits(table: RawTable, left: ReadonlySet<string>, word: string): boolean {
+  const column = named([...left], [word]);
+  return column === null || table.rowCount === 0 || shareOfTimes(table, column) >= 0.5;
+}
+
+const worded = (left: ReadonlySet<string>, part: string): string | null =>
+  [...left].find((name) => wordOf(name).split('_').includes(part)) ?? null;
+
+const cellsOf = ({ columns, preview }: RawTable, column: string): string[] => {
+  const at = columns.indexOf(column);
+  return preview.map(({ cells }) => cells[at] ?? '');
+};
+
+/** The first column whose cells are all there and all different. */
+function distinctColumn(table: RawTable, left: ReadonlySet<string>): string | null {
+  const hit = [...left].find((column) => {
+    const cells = cellsOf(table, column);
+    return new Set(cells).size === cells.length && !cells.includes('');
+  });
+  return hit ?? [...left][0] ?? null;
+}
+
+function shareOfTimes(table: RawTable, column: string): number {
+  const known = cellsOf(table, column).filter((cell) => !isMissing(cell));
+  if (known.length === 0) return 0;
+  return known.filter((cell) => isDateLike(cell) || isNumberLike(cell)).length / known.length;
+}
+
+/** The first column of dates, else the first of numbers. */
+function timeColumn(table: RawTable, left: ReadonlySet<string>): string | null {
+  const dated = [...left].find((column) => {
+    const known = cellsOf(table, column).filter((cell) => !isMissing(cell));
+    return known.length > 0 && known.filter(isDateLike).length >= known.length * 0.8;
+  });
+  return dated ?? [...left].find((column) => shareOfTimes(table, column) >= 0.8) ?? null;
+}
+
+function guessEdgeColumns(table: RawTable): EdgeColumns {
+  const left = new Set(table.columns);
+  const take = (column: string | null): string | null => {
+    if (column !== null) left.delete(column);
+    return column;
+  };
+  const byName = (words: readonly string[]) => named([...left], words);
+  let source = byName(EDGE_WORDS.source);
+  let target = byName(EDGE_WORDS.target);
+  if (source === null || target === null || source === target) {
+    [source = null, target = null] = table.columns;
+  }
+  take(source);
+  take(target);
+  const time = take(byName(EDGE_WORDS.time) ?? edgeTime(table, left));
+  const weight = take(byName(EDGE_WORDS.weight) ?? unnamedWeight(table, left));
+  return { source, target, weight, time };
+}
+
+/** A column of dates; or, without names, of whole numbers past a million that never fall. */
+function edgeTime(table: RawTable, left: ReadonlySet<string>): string | null {
+  return (
+    [...left].find((column) => {
+      const known = cellsOf(table, column).filter((cell) => !isMissing(cell));
+      if (known.length === 0) return false;
+      if (known.every(isDateLike)) return true;
+      const values = known.map(Number);
+      return values.every(
+        (value, at) => Number.isInteger(value) && value >= 1e6 && value >= (values[at - 1] ?? 0),
+      );
+    }) ?? null
+  );
+}
+
+/** In a table without names, the first column of numbers that is left. */
+function unnamedWeight(table: RawTable, left: ReadonlySet<string>): string | null {
+  return (
+    [...left].find((column) => /^column \d+$/.test(column) && shareOfTimes(table, column) === 1) ??
+    null
+  );
+}
+
+function guessOrder({ nodes, edges }: ImportChoices['columns']): OrderKind {
+  if (nodes.entry !== null) return 'column';
+  return edges.time !== null ? 'first_edge' : 'rows';
+}
+
+/** A column of times, and those that are read with it. */
+interface TimedColumn extends PickedTable {
+  readonly column: string;
+  readonly others: readonly (string | null)[];
+}
+
+function timeColumnOf(
+  kind: OrderKind,
+  nodes: PickedTable | null,
+  edges: PickedTable | null,
+  columns: ImportChoices['columns'],
+): TimedColumn | null {
+  const { entry, earliest, latest } = columns.nodes;
+  if (kind === 'column' && nodes && entry !== null)
+    return { ...nodes, column: entry, others: [earliest, latest] };
+  const { time } = columns.edges;
+  if (kind === 'first_edge' && edges && time !== null)
+    return { ...edges, column: time, others: [] };
+  return null;
+}
+
+function scaleOf({ file, table, column, others }: TimedColumn, decimal: '.' | ',') {
+  const scale = new TimeScale(file, { decimal, dayOrder: null, years: 'numbers' });
+  const places = [column, ...others].flatMap((name) =>
+    name === null ? [] : [{ field: name, at: table.columns.indexOf(name) }],
+  );
+  let rows = 0;
+  for (const { line, cells } of table.rows()) {
+    if (++rows > LOOKED_AT) break;
+    for (const { field, at } of places) scale.see(cells[at] ?? '', { line, field });
+  }
+  const ambiguous = scale.settle(new IssueList());
+  return { dayOrder: scale.dayOrder, ambiguous };
+}
+
+function orderQuestion(nodes: PickedTable | null, edges: PickedTable | null): Question[] {
+  const file = (nodes ?? edges)?.file;
+  if (file === undefined) return [];
+  return [
+    {
+      kind: 'order',
+      file,
+      column: null,
+      text: 'No column was found that says when the nodes arrived. Is it the order of the rows, or does one of the columns say it?',
+      examples: [],
+      blocking: false,
+    },
+  ];
+}
+
+function yearQuestion({ file, table, column }: TimedColumn): Question[] {
+  const known = cellsOf(table, column).filter((cell) => !isMissing(cell));
+  const years = known.filter((cell) => /^(?:1[4-9]|20)\d{2}$/.test(cell));
+  if (years.length === 0 || years.length < known.length) return [];
+  return [
+    {
+      kind: 'years',
+      file,
+      column,
+      text: `Are values like ${years[0]} years? As dates each is an interval from its first day to its last; as numbers they are points.`,
+      examples: years.slice(0, 5),
+      blocking: false,
+    },
+  ];
+}
+
+function missingQuestion({ file, table, column }: TimedColumn): Question[] {
+  const at = table.columns.indexOf(column);
+  let missing = 0;
+  for (const { cells } of table.rows()) if (isMissing(cells[at] ?? '')) missing++;
+  if (missing === 0) return [];
+  return [
+    {
+      kind: 'missing',
+      file,
+      column,
+      text: `${missing} ${missing === 1 ? 'node has' : 'nodes have'} no entry. Are they left out, or placed last, or is the import refused?`,
+      examples: [],
+      blocking: false,
+    },
+  ];
+}
