@@ -155,9 +155,10 @@ export class Overlay {
     else if (d < tables.top) changes.infinite(d, time, 1);
   }
 
-  /** True unless column k of b's star is zero. */
+  /** True unless column k of b's star is zero, as an edge is whose ends are connected already. */
   private reduceOfB(d: number, list: StarColumns, k: number, time: number): boolean {
     const { column, tables, pulse } = this;
+    if (d === 1 && column.unionOfB >= 0 && this.row.components[time] === 1) return false;
     const links = list === tables.starColumns[d]!.free ? this.links[d] : undefined;
     const known = links !== undefined && !touches(links, k, column.p);
     const zeros = known && !vanishes(links, k) ? undefined : this.zeros[d];
@@ -221,6 +222,7 @@ export class Overlay {
   /** True unless column i of a's star is zero. One that survives in a's link has been left out. */
   private reduceOfA(d: number, i: number, entry: number): boolean {
     const { column } = this;
+    if (d === 1 && column.unionOfA >= 0 && this.row.components[column.q] === 1) return false;
     const links = this.links[d];
     const zeros = this.zeros[d];
     const before = this.pulse.work;

@@ -33,6 +33,8 @@ export class RowComplex {
   /** Columns of K (key) that need work after q, from this position to the one in `codes`. */
   readonly suffix: readonly Agenda[];
 
+  /** Number of connected components of M up to each position. */
+  readonly components: Int32Array;
   /** Simplices of each dimension whose class never dies in M. */
   readonly unclaimed: readonly IntPool[];
 
@@ -66,6 +68,7 @@ export class RowComplex {
     this.finite = agendas(top);
     this.alive = agendas(top);
     this.suffix = agendas(top + 1);
+    this.components = budget.int32(nodeCount);
     this.unclaimed = levels.slice(0, top).map(() => new IntPool(budget, 64));
     this.rows = new RowSet(budget, Math.max(...levels.slice(0, top).map((level) => level.count)));
     this.recordedLength = recorded.store.length;
@@ -85,6 +88,7 @@ export class RowComplex {
     }
     for (let d = tables.top; d >= 1; d--) this.reduceDimension(d);
     this.compareNodes();
+    this.countComponents();
   }
 
   /** Rows whose first child adds a are paired with their second child, if there is one. */
@@ -277,5 +281,20 @@ export class RowComplex {
       const status = childCount[v] === 0 ? Status.Zero : Status.Paired;
       if (positive || status === Status.Zero) this.compareClass(0, v, v, status, positive);
     }
+  }
+
+  /** A node without an earlier neighbour begins a component, which ends where M pairs the node. */
+  private countComponents(): void {
+    const { components, tables, node } = this;
+    const { position } = tables.columns[1]!;
+    const mate = this.mate[0]!;
+    components.fill(0);
+    for (let v = 0; v < components.length; v++) {
+      const m = mate[v]!;
+      if (v === node || m >= 0) continue;
+      components[v]!++;
+      if (m <= -2) components[position[mateOfColumn(m)]!]!--;
+    }
+    for (let v = 1; v < components.length; v++) components[v]! += components[v - 1]!;
   }
 }
