@@ -1,10 +1,10 @@
-import { RowSet } from './bitset';
 import { ColumnHeap } from './heap';
 import { touches, type LinkColumns } from './links';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
 import type { RowComplex } from './row';
+import { SwappedSum, widestStar } from './swapped-sum';
 import type { Tables } from './tables';
 
 /** Which part of the swapped complex a row belongs to. */
@@ -14,17 +14,11 @@ export const Part = { Rest: 0, StarOfB: 1, StarOfA: 2 } as const;
 const HEAD = 4;
 
 /**
- * One column of the swapped complex while it is reduced, and what the reduced ones have claimed.
- * A column has three parts: rows of M by id, rows of b's star and of a's star by local index. All
+ * One column of the swapped complex while it is reduced, and what the reduced ones have claimed. All
  * arrays live as long as the matrix; claims carry a running number, so that those of earlier pairs
  * are told by being smaller and nothing is cleared between pairs.
  */
-export class OverlayColumn {
-  /** Dimension of the column; its rows have one less. */
-  dimension = 0;
-  /** Positions: a goes out at p and comes in at q, where b goes out. */
-  p = 0;
-  q = 0;
+export class OverlayColumn extends SwappedSum {
   /** Entry of the edge that b, a as rows are paired with for nothing, -1 if none. */
   unionOfB = -1;
   unionOfA = -1;
@@ -47,33 +41,23 @@ export class OverlayColumn {
   /** `queued[d][c]` = base: column c of K has been put into `later` by this pair. */
   readonly queued: readonly Int32Array[];
 
-  private readonly rest: RowSet;
-  private readonly starB: RowSet;
-  private readonly starA: RowSet;
   private readonly heads: IntPool;
   private readonly pool: IntPool;
 
   constructor(
-    private readonly tables: Tables,
-    private readonly recorded: Recorded,
-    private readonly rowComplex: RowComplex,
+    tables: Tables,
+    recorded: Recorded,
+    rowComplex: RowComplex,
     private readonly links: readonly (LinkColumns | undefined)[],
-    private readonly pulse: Pulse,
+    pulse: Pulse,
   ) {
+    super(tables, recorded, rowComplex, pulse);
     const { budget, levels, stars, top, columns } = tables;
-    const starSizes = stars.map(({ start }) => {
-      let size = 0;
-      for (let x = 0; x + 1 < start.length; x++) size = Math.max(size, start[x + 1]! - start[x]!);
-      return size;
-    });
+    const starSizes = stars.map(widestStar);
     this.claimM = levels.slice(0, top).map(({ count }) => budget.int32(count));
     this.claimB = starSizes.map((size) => budget.int32(size));
     this.claimA = starSizes.map((size) => budget.int32(size));
     this.queued = columns.map(({ count }) => budget.int32(count));
-    const widest = Math.max(...levels.slice(0, top).map((level) => level.count));
-    this.rest = new RowSet(budget, widest);
-    this.starB = new RowSet(budget, Math.max(...starSizes));
-    this.starA = new RowSet(budget, Math.max(...starSizes));
     this.heads = new IntPool(budget);
     this.pool = new IntPool(budget);
     this.evicted = new ColumnHeap(budget, 64);
@@ -100,54 +84,6 @@ export class OverlayColumn {
     this.pool.length = 0;
   }
 
-  /** Adds the boundary of b + sigma (`entry` in dimension d). */
-  addStarB(entry: number): void {
-    const d = this.dimension;
-    const { nodes, facets } = this.tables.levels[d]!;
-    const local = this.tables.stars[d - 1]!.local;
-    const slot = entry % (d + 1);
-    const at = entry - slot;
-    for (let i = 0; i <= d; i++) {
-      if (i === slot) this.rest.toggle(facets[at + i]!);
-      else this.starB.toggle(local[this.entryInFacet(facets[at + i]!, i, slot, nodes[entry]!)]!);
-    }
-    this.pulse.tick(2 * d);
-  }
-
-  /** Adds the boundary of a + sigma, where sigma may contain b. */
-  addStarA(entry: number): void {
-    const d = this.dimension;
-    const { nodes, facets } = this.tables.levels[d]!;
-    const local = this.tables.stars[d - 1]!.local;
-    const slot = entry % (d + 1);
-    const at = entry - slot;
-    for (let i = 0; i <= d; i++) {
-      if (i === slot) this.toggleWithoutA(facets[at + i]!);
-      else this.starA.toggle(local[this.entryInFacet(facets[at + i]!, i, slot, nodes[entry]!)]!);
-    }
-    this.pulse.tick(2 * d);
-  }
-
-  /** Adds column c of a star, reduced in its link: of a's star, or of b's and not touched by a. */
-  addLinkColumn(links: LinkColumns, c: number): void {
-    const { items, start, middle } = links;
-    const from = start[c]!;
-    const end = start[c + 1]!;
-    const rowsEnd = middle[c]!;
-    const ofA =
-      this.tables.levels[this.dimension]!.nodes[
-        this.tables.starColumns[this.dimension]!.free.entry[c]!
-      ] === this.p;
-    if (ofA) {
-      this.starA.toggleAll(items, from, rowsEnd);
-      for (let i = rowsEnd; i < end; i++) this.toggleWithoutA(items[i]!);
-    } else {
-      this.starB.toggleAll(items, from, rowsEnd);
-      this.rest.toggleAll(items, rowsEnd, end);
-    }
-    this.pulse.tick(end - from);
-  }
-
   /** The column of b's star that its link pairs with row `local` of the star, -1 if a or time part them. */
   private holderInB(d: number, links: LinkColumns, local: number): number {
     const { p, q } = this;
@@ -164,48 +100,12 @@ export class OverlayColumn {
     return c >= 0 && this.tables.starColumns[d]!.free.latest[c]! <= this.q ? c : -1;
   }
 
-  /** Starts from the reduced column of M. */
-  addReducedOfM(c: number): void {
-    const start = this.rowComplex.start[this.dimension]![c]!;
-    const length = this.rowComplex.length[this.dimension]![c]!;
-    this.rest.toggleAll(this.recorded.store.data, start, start + length);
-    this.pulse.tick(length);
-  }
-
-  /** Adds K's reduced column c, of position > q, its rows rewritten for the swapped order. */
-  addLaterColumn(c: number): void {
-    const d = this.dimension;
-    const reduced = this.recorded.reduced[d]!;
-    const { data } = this.recorded.store;
-    const { nodes } = this.tables.levels[d - 1]!;
-    const local = this.tables.stars[d - 1]!.local;
-    const from = reduced.start[c]!;
-    const to = from + reduced.length[c]!;
-    for (let i = from; i < to; i++) {
-      const row = data[i]!;
-      let slot = 0;
-      while (slot < d && nodes[row * d + slot] !== this.p) slot++;
-      if (slot < d) this.starA.toggle(local[row * d + slot]!);
-      else this.toggleWithoutA(row);
-    }
-    this.pulse.tick(2 * (to - from));
-  }
-
   /** Reduces the part in b's star alone; true if nothing is left of it, the column a cycle of M. */
   reduceWithinB(): boolean {
     for (let b = this.starB.top(); b >= 0; b = this.starB.top()) {
       if (this.stepStarB(b)) return false;
     }
     return true;
-  }
-
-  /** Moves a column that has no row in either star into `cells`. */
-  takeCycle(cells: IntPool): void {
-    this.rest.drain(cells);
-  }
-
-  addCycle(cells: IntPool): void {
-    this.rest.toggleAll(cells.data, 0, cells.length);
   }
 
   /**
@@ -384,26 +284,5 @@ export class OverlayColumn {
     this.starB.toggleAll(data, heads[at + 1]!, heads[at + 2]!);
     this.starA.toggleAll(data, heads[at + 2]!, heads[at + 3]!);
     this.pulse.tick(heads[at + 3]! - start);
-  }
-
-  /** A row without a: of b's star if its latest node is b, else of M. */
-  private toggleWithoutA(row: number): void {
-    const d = this.dimension;
-    if (this.tables.levels[d - 1]!.nodes[row * d] === this.q) {
-      this.starB.toggle(this.tables.stars[d - 1]!.local[row * d]!);
-    } else this.rest.toggle(row);
-  }
-
-  /**
-   * Entry of x in the facet without slot i, where x has slot `slot`. Without slot 0 another node
-   * becomes the latest and moves to the front, so that x is looked for.
-   */
-  private entryInFacet(facet: number, i: number, slot: number, x: number): number {
-    const d = this.dimension;
-    if (i > 0) return facet * d + (slot < i ? slot : slot - 1);
-    const { nodes } = this.tables.levels[d - 1]!;
-    let entry = facet * d;
-    while (nodes[entry] !== x) entry++;
-    return entry;
   }
 }
