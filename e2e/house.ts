@@ -3,7 +3,7 @@ import { expect, type APIRequestContext } from '@playwright/test';
 import { me, type Me } from '#contract/accounts';
 import { dataset, type Dataset } from '#contract/datasets';
 import type { Role } from '#contract/enums';
-import { run, type Run } from '#contract/runs';
+import { run, startedRun, type Run } from '#contract/runs';
 import { workspace, type Workspace } from '#contract/workspaces';
 import { csvFile, EDGES_CSV, NODES_CSV } from './network';
 
@@ -76,8 +76,8 @@ export class House {
     const path = `/api/workspaces/${workspaceId}/runs`;
     const answer = await this.request.post(path, { data: { revisionId } });
     expect(answer.status(), await answer.text()).toBe(201);
-    const started = run.parse(await answer.json());
-    let now = started;
+    const started = startedRun.parse(await answer.json());
+    let now: Run = started;
     await expect
       .poll(
         async () => {

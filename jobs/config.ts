@@ -29,6 +29,8 @@ const environment = z.object({
   HEDDLE_MAX_SIMPLICES: z.preprocess(filled, whole(1, 2_000_000_000).default(40_000_000)),
   /** Most megabytes of typed arrays of one thread. */
   HEDDLE_MAX_MEGABYTES: z.preprocess(filled, whole(1, 1_000_000).default(2_048)),
+  /** Most hours of one thread that a run may take, by its estimate and by the clock. */
+  HEDDLE_MAX_HOURS: z.preprocess(filled, z.coerce.number().min(0.0001).max(10_000).default(24)),
   /** Megabytes of JavaScript heap of one thread. */
   HEDDLE_HEAP_MEGABYTES: z.preprocess(filled, whole(32, 1_000_000).default(2_048)),
   /** A run that took at least so many seconds is announced by mail when it ends. */
@@ -63,6 +65,8 @@ export interface WorkerConfig {
   readonly threads: number;
   readonly secondsPerBlock: number;
   readonly limits: { readonly simplices: number; readonly bytes: number };
+  /** Most seconds of one thread that a run may take. */
+  readonly mostSeconds: number;
   readonly heapMegabytes: number;
   readonly mail: MailConfig;
   readonly logLevel: string;
@@ -97,6 +101,7 @@ export function readConfig(source: NodeJS.ProcessEnv = process.env): WorkerConfi
     threads: env.HEDDLE_THREADS ?? availableParallelism(),
     secondsPerBlock: env.HEDDLE_BLOCK_SECONDS,
     limits: { simplices: env.HEDDLE_MAX_SIMPLICES, bytes: env.HEDDLE_MAX_MEGABYTES * 2 ** 20 },
+    mostSeconds: env.HEDDLE_MAX_HOURS * 3600,
     heapMegabytes: env.HEDDLE_HEAP_MEGABYTES,
     mail: {
       afterSeconds: env.HEDDLE_MAIL_AFTER,

@@ -1,8 +1,10 @@
 import type { Db } from '../db/client';
 import type { Listener } from '../db/listener';
 import { takeFromOutbox, type OutboxRow } from '../db/repositories/outbox';
-import { listMissing } from '../db/repositories/runBlocks';
-import { findDispatch, markDispatched } from '../db/repositories/runDispatch';
+import { decodeBlockPairs } from '../db/codecs/blockPairs';
+import { listMissing, listMissingPairs } from '../db/repositories/runBlocks';
+import { findDispatch, findFocus, markDispatched } from '../db/repositories/runDispatch';
+import { blocksInFocus } from './focus';
 import { PAYLOADS, blockJobId, finishJobId, planJobId } from './queue/jobs';
 import type { Producer } from './queue/producer';
 
@@ -72,6 +74,8 @@ export class Relay {
       }
       case 'blocks':
         return this.#dispatchBlocks(PAYLOADS.plan.parse(raw), dispatchId);
+      case 'focus':
+        return this.#hurry(PAYLOADS.plan.parse(raw));
       case 'pair': {
         const pair = PAYLOADS.pair.parse(raw);
         return this.producer.add({ name: 'pair', id: dispatchId, payload: pair });
@@ -104,5 +108,22 @@ export class Relay {
       })),
     );
     await markDispatched(this.db, run);
+    await this.#hurry(run);
+  }
+
+  /** Brings the blocks forward that somebody looks at; none is added, so none is computed twice. */
+  async #hurry(run: { runId: string; attempt: number }): Promise<void> {
+    const looked = await findFocus(this.db, run.runId);
+    if (looked === null) return;
+    const missing = await listMissingPairs(this.db, run.runId);
+    const waiting = missing.map(({ block, pairs, ...stored }) => ({
+      block,
+      pairs,
+      ...decodeBlockPairs(stored),
+    }));
+    const ids = blocksInFocus(waiting, looked.focus).map((block) =>
+      blockJobId(looked.dispatchId, block),
+    );
+    await this.producer.hurry('blocks', ids);
   }
 }

@@ -1,4 +1,6 @@
+import { randomUUID } from 'node:crypto';
 import { existsSync } from 'node:fs';
+import { hostname } from 'node:os';
 import { join } from 'node:path';
 import type { Logger } from 'pino';
 import { openDatabase } from '../db/client';
@@ -6,6 +8,7 @@ import { openListener } from '../db/listener';
 import { beat } from '../db/repositories/beats';
 import { Activity } from './activity';
 import { ConfigurationError, type WorkerConfig } from './config';
+import { ENGINE_VERSION } from './engine/index';
 import { block, finish } from './handlers/block';
 import type { Context } from './handlers/context';
 import { estimate } from './handlers/estimate';
@@ -38,7 +41,7 @@ const handlersOf = (context: Context): Handlers => ({
   pair: (payload) => pair(payload, context),
   estimate: (payload) => estimate(payload, context),
   mail: (payload) => mail(payload, context),
-  beat: () => beat(context.db),
+  beat: () => beat(context.db, ENGINE_VERSION),
 });
 
 /** Milliseconds in which the same trouble is logged once: a lost Redis fails many times a second. */
@@ -81,6 +84,7 @@ export function startWorker(config: WorkerConfig, log: Logger): RunningWorker {
     pool: openPool({ ...threads, threads: config.threads }),
     pairPool: openPool({ ...threads, threads: 1 }),
     mailRule: mailRule(config.mail),
+    workerName: `${hostname()} ${process.pid} ${randomUUID().slice(0, 8)}`,
   };
   const handlers = handlersOf(context);
   const relay = new Relay(db, producer, listener, onError);

@@ -15,6 +15,8 @@ export type RunRoutes = Pick<
   | 'createRun'
   | 'run'
   | 'stopRun'
+  | 'extendRun'
+  | 'focusRun'
   | 'runEvents'
   | 'runBlock'
   | 'runBarcode'

@@ -72,6 +72,7 @@ export async function listRunBriefs(db: Queryable, scope: Scope, datasetIds: rea
       revisionNumber: revisions.number,
       scale: runs.scale,
       dimensions: runs.dimensions,
+      part: runs.part,
       state: runs.state,
       createdAt: runs.createdAt,
     })

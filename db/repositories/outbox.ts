@@ -8,8 +8,12 @@ export type OutboxRow = typeof outbox.$inferSelect;
 export type OutboxEntry =
   | { readonly kind: 'plan'; readonly payload: { runId: string; attempt: number } }
   | { readonly kind: 'blocks'; readonly payload: { runId: string; attempt: number } }
+  | { readonly kind: 'focus'; readonly payload: { runId: string; attempt: number } }
   | { readonly kind: 'pair'; readonly payload: { runId: string; p: number; q: number } }
-  | { readonly kind: 'estimate'; readonly payload: { revisionId: string; maxDimension: number } }
+  | {
+      readonly kind: 'estimate';
+      readonly payload: { revisionId: string; maxDimension: number; partKey: string };
+    }
   | { readonly kind: 'mail'; readonly payload: { mailId: string } }
   | { readonly kind: 'beat'; readonly payload: Record<string, never> };
 

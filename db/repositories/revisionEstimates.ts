@@ -2,12 +2,14 @@ import { and, eq, gt, isNull, lte, sql } from 'drizzle-orm';
 import type { Db, Queryable } from '../client';
 import { revisionEstimates } from '../schema/index';
 import { addToOutbox } from './outbox';
+import { partKey, type RunPart } from './runParts';
 import type { Scope } from './scope';
 
-/** Which estimate: a revision and the highest dimension D, 0..3. */
+/** Which estimate: a revision, the highest dimension D, 0..3, and the name of a part. */
 export interface EstimateQuestion {
   readonly revisionId: string;
   readonly maxDimension: number;
+  readonly partKey: string;
 }
 
 export type EstimateAnswer =
@@ -22,7 +24,7 @@ const KEPT = sql`now() - interval '1 hour'`;
 export async function findEstimate(
   db: Queryable,
   scope: Scope,
-  { revisionId, maxDimension }: EstimateQuestion,
+  { revisionId, maxDimension, partKey }: EstimateQuestion,
 ): Promise<EstimateAnswer | null> {
   const [row] = await db
     .select({ estimate: revisionEstimates.estimate, failure: revisionEstimates.failure })
@@ -32,6 +34,7 @@ export async function findEstimate(
         eq(revisionEstimates.workspaceId, scope.workspaceId),
         eq(revisionEstimates.revisionId, revisionId),
         eq(revisionEstimates.maxDimension, maxDimension),
+        eq(revisionEstimates.partKey, partKey),
         gt(revisionEstimates.askedAt, KEPT),
       ),
     );
@@ -40,21 +43,27 @@ export async function findEstimate(
   return row.estimate === null ? { kind: 'waiting' } : { kind: 'answered', estimate: row.estimate };
 }
 
-/** Puts the question once an hour, with the row that will enqueue it. */
+/**
+ * Puts the question once an hour, with the row that will enqueue it.
+ * @param part canonical
+ */
 export async function askEstimate(
   db: Db,
   { workspaceId }: Scope,
-  { revisionId, maxDimension }: EstimateQuestion,
+  question: Omit<EstimateQuestion, 'partKey'>,
+  part: RunPart,
 ): Promise<void> {
+  const asking = { ...question, partKey: partKey(part) };
   await db.transaction(async (tx) => {
     const asked = await tx
       .insert(revisionEstimates)
-      .values({ workspaceId, revisionId, maxDimension })
+      .values({ workspaceId, ...asking, part })
       .onConflictDoUpdate({
         target: [
           revisionEstimates.workspaceId,
           revisionEstimates.revisionId,
           revisionEstimates.maxDimension,
+          revisionEstimates.partKey,
         ],
         set: {
           estimate: null,
@@ -67,24 +76,31 @@ export async function askEstimate(
       })
       .returning({ maxDimension: revisionEstimates.maxDimension });
     if (asked.length === 0) return;
-    await addToOutbox(tx, workspaceId, { kind: 'estimate', payload: { revisionId, maxDimension } });
+    await addToOutbox(tx, workspaceId, { kind: 'estimate', payload: asking });
   });
 }
 
 /**
- * Worker side: @returns the workspace of the question and how often it was begun, now included; null
- * if it is answered.
+ * Worker side: @returns workspace and part of the question and how often it was begun, now included;
+ * null if it is answered.
  */
-export async function claimEstimate(
-  db: Db,
-  question: EstimateQuestion,
-): Promise<{ readonly workspaceId: string; readonly tries: number } | null> {
+export async function claimEstimate(db: Db, question: EstimateQuestion): Promise<Claimed | null> {
   const [row] = await db
     .update(revisionEstimates)
     .set({ tries: sql`${revisionEstimates.tries} + 1`, dispatchedAt: sql`now()` })
     .where(unanswered(question))
-    .returning({ workspaceId: revisionEstimates.workspaceId, tries: revisionEstimates.tries });
+    .returning({
+      workspaceId: revisionEstimates.workspaceId,
+      part: revisionEstimates.part,
+      tries: revisionEstimates.tries,
+    });
   return row ?? null;
+}
+
+export interface Claimed {
+  readonly workspaceId: string;
+  readonly part: RunPart;
+  readonly tries: number;
 }
 
 /** Worker side: stores the first answer and tells who waits for it. */
@@ -100,13 +116,18 @@ export async function answerEstimate(
       .where(unanswered(question))
       .returning({ maxDimension: revisionEstimates.maxDimension });
     if (stored.length === 0) return;
-    const name = `${question.revisionId} ${question.maxDimension}`;
+    const name = estimateName(question);
     await tx.execute(sql`select pg_notify('estimate_answered', ${name})`);
   });
 }
 
-const unanswered = ({ revisionId, maxDimension }: EstimateQuestion) =>
+/** What `estimate_answered` carries. */
+export const estimateName = ({ revisionId, maxDimension, partKey }: EstimateQuestion): string =>
+  `${revisionId} ${maxDimension} ${partKey}`;
+
+const unanswered = ({ revisionId, maxDimension, partKey }: EstimateQuestion) =>
   and(
+    eq(revisionEstimates.partKey, partKey),
     eq(revisionEstimates.revisionId, revisionId),
     eq(revisionEstimates.maxDimension, maxDimension),
     isNull(revisionEstimates.estimate),
@@ -124,12 +145,15 @@ export async function redispatchEstimates(db: Db, seconds: number): Promise<void
           select 1 from outbox o
           where o.kind = 'estimate' and o.payload->>'revisionId' = e.revision_id::text
             and o.payload->>'maxDimension' = e.max_dimension::text
+            and o.payload->>'partKey' = e.part_key
         )
-      returning workspace_id, revision_id, max_dimension
+      returning workspace_id, revision_id, max_dimension, part_key
     ), asked as (
       insert into outbox (kind, workspace_id, payload)
       select 'estimate', workspace_id,
-        jsonb_build_object('revisionId', revision_id, 'maxDimension', max_dimension) from late
+        jsonb_build_object(
+          'revisionId', revision_id, 'maxDimension', max_dimension, 'partKey', part_key
+        ) from late
       returning 1
     )
     select pg_notify('outbox_added', '') from asked`);

@@ -164,15 +164,15 @@ function isRevision(scope: Scope, revisionId: string) {
   return and(eq(revisions.workspaceId, scope.workspaceId), eq(revisions.id, revisionId));
 }
 
-/** @returns whether the workspace has this revision. */
-export async function hasRevision(
+/** @returns how many nodes the revision has, or null if the workspace has no such revision. */
+export async function findRevisionSize(
   db: Queryable,
   scope: Scope,
   revisionId: string,
-): Promise<boolean> {
-  const rows = await db
-    .select({ id: revisions.id })
+): Promise<number | null> {
+  const [row] = await db
+    .select({ nodeCount: revisions.nodeCount })
     .from(revisions)
     .where(isRevision(scope, revisionId));
-  return rows.length > 0;
+  return row?.nodeCount ?? null;
 }

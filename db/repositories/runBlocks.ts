@@ -24,8 +24,13 @@ export async function listLanded(
   return rows.map(({ block }) => block);
 }
 
-export interface BlockBytes {
+/** The stored pairs of a block (db/codecs/blockPairs). */
+export interface PairBytes {
   readonly rows: Uint8Array;
+  readonly partners: Uint8Array | null;
+}
+
+export interface BlockBytes extends PairBytes {
   readonly result: Uint8Array;
   readonly pairs: number;
 }
@@ -38,7 +43,12 @@ export async function findBlock(
   block: number,
 ): Promise<BlockBytes | null> {
   const [row] = await db
-    .select({ rows: runBlocks.rows, result: runBlocks.result, pairs: runBlocks.pairs })
+    .select({
+      rows: runBlocks.rows,
+      partners: runBlocks.partners,
+      result: runBlocks.result,
+      pairs: runBlocks.pairs,
+    })
     .from(runBlocks)
     .where(
       and(
@@ -51,14 +61,19 @@ export async function findBlock(
   return row?.result ? { ...row, result: row.result } : null;
 }
 
-/** @returns which arrival positions each block of the plan computes. */
+/** @returns which pairs each block of the plan computes. */
 export async function listBlockRows(
   db: Queryable,
   scope: Scope,
   runId: string,
-): Promise<{ readonly block: number; readonly rows: Uint8Array }[]> {
+): Promise<(PairBytes & { readonly block: number; readonly pairs: number })[]> {
   return db
-    .select({ block: runBlocks.block, rows: runBlocks.rows })
+    .select({
+      block: runBlocks.block,
+      rows: runBlocks.rows,
+      partners: runBlocks.partners,
+      pairs: runBlocks.pairs,
+    })
     .from(runBlocks)
     .where(and(eq(runBlocks.workspaceId, scope.workspaceId), eq(runBlocks.runId, runId)))
     .orderBy(asc(runBlocks.block));
@@ -74,42 +89,59 @@ export async function listMissing(db: Queryable, runId: string): Promise<number[
   return rows.map(({ block }) => block);
 }
 
-/** Worker side: @returns the rows to compute, or null if the block is stored or does not exist. */
-export async function findMissingRows(
+/** Worker side: @returns the pairs of every block that is planned but not computed, ascending. */
+export async function listMissingPairs(
+  db: Queryable,
+  runId: string,
+): Promise<(PairBytes & { readonly block: number; readonly pairs: number })[]> {
+  return db
+    .select({
+      block: runBlocks.block,
+      rows: runBlocks.rows,
+      partners: runBlocks.partners,
+      pairs: runBlocks.pairs,
+    })
+    .from(runBlocks)
+    .where(and(eq(runBlocks.runId, runId), isNull(runBlocks.result)))
+    .orderBy(asc(runBlocks.block));
+}
+
+/** Worker side: @returns the pairs to compute, or null if the block is stored or does not exist. */
+export async function findMissingPairs(
   db: Queryable,
   runId: string,
   block: number,
-): Promise<Uint8Array | null> {
+): Promise<PairBytes | null> {
   const [row] = await db
-    .select({ rows: runBlocks.rows })
+    .select({ rows: runBlocks.rows, partners: runBlocks.partners })
     .from(runBlocks)
     .where(and(eq(runBlocks.runId, runId), eq(runBlocks.block, block), isNull(runBlocks.result)));
-  return row?.rows ?? null;
+  return row ?? null;
 }
 
-export interface PlannedBlock {
+export interface PlannedBlock extends PairBytes {
   readonly pairs: number;
-  /** Stored u32 array of arrival positions. */
-  readonly rows: Uint8Array;
+  /** Estimate of one thread's seconds. */
+  readonly cost: number;
 }
 
 const BATCH = 500;
 
-/** Worker side, within the transaction of the plan: writes the blocks 0, 1, … */
+/** Worker side, within the transaction of the plan: writes the blocks first, first + 1, … */
 export async function insertPlan(
   db: Queryable,
-  workspaceId: string,
-  runId: string,
+  { workspaceId, runId, first }: { workspaceId: string; runId: string; first: number },
   blocks: readonly PlannedBlock[],
 ): Promise<void> {
   for (let start = 0; start < blocks.length; start += BATCH) {
-    await db
-      .insert(runBlocks)
-      .values(
-        blocks
-          .slice(start, start + BATCH)
-          .map(({ pairs, rows }, k) => ({ workspaceId, runId, block: start + k, pairs, rows })),
-      );
+    await db.insert(runBlocks).values(
+      blocks.slice(start, start + BATCH).map((planned, k) => ({
+        ...planned,
+        workspaceId,
+        runId,
+        block: first + start + k,
+      })),
+    );
   }
 }
 
@@ -126,12 +158,13 @@ export async function fillBlock(
     readonly result: Uint8Array;
     readonly landed: number;
     readonly attempt: number;
+    readonly storedBy: string;
   },
 ): Promise<number | null> {
-  const { block, result, landed, attempt } = filled;
+  const { block, ...stored } = filled;
   const [row] = await db
     .update(runBlocks)
-    .set({ result, landed, attempt, finishedAt: sql`now()` })
+    .set({ ...stored, finishedAt: sql`now()` })
     .where(and(eq(runBlocks.runId, runId), eq(runBlocks.block, block), isNull(runBlocks.result)))
     .returning({ pairs: runBlocks.pairs });
   return row?.pairs ?? null;

@@ -1,4 +1,5 @@
 import { and, eq, inArray, sql } from 'drizzle-orm';
+import type { RunFocus } from '#contract/enums';
 import type { Db } from '../client';
 import { runs } from '../schema/index';
 import { addToOutbox } from './outbox';
@@ -110,4 +111,16 @@ export async function findDispatch(db: Db, fence: Fence): Promise<string | null>
       ),
     );
   return row?.dispatchId ?? null;
+}
+
+/** @returns what somebody looks at while the run goes, and its latest dispatch; null if nobody does. */
+export async function findFocus(
+  db: Db,
+  runId: string,
+): Promise<{ readonly focus: RunFocus; readonly dispatchId: string } | null> {
+  const [row] = await db
+    .select({ focus: runs.focus, dispatchId: runs.dispatchId })
+    .from(runs)
+    .where(and(eq(runs.id, runId), inArray(runs.state, ['queued', 'running'])));
+  return row?.focus ? { focus: row.focus, dispatchId: row.dispatchId } : null;
 }

@@ -24,6 +24,10 @@ export type WorkRun = Pick<
   | 'attempt'
   | 'blockCount'
   | 'dispatchId'
+  | 'part'
+  | 'extendedFrom'
+  | 'blocksBefore'
+  | 'secondsSpent'
 > & { readonly nodeCount: number };
 
 /** When a message about the end of a run is due, and what it says. */
@@ -64,7 +68,8 @@ export async function claimRun(db: Db, fence: Fence): Promise<WorkRun | null> {
 /** Reads a run in any state, for answering questions about single swaps. */
 export async function describe(db: Db, runId: string): Promise<WorkRun | null> {
   const { id, workspaceId, revisionId, scale, dimensions, engineVersion } = getTableColumns(runs);
-  const { attempt, blockCount, dispatchId } = getTableColumns(runs);
+  const { attempt, blockCount, dispatchId, part, extendedFrom } = getTableColumns(runs);
+  const { blocksBefore, secondsSpent } = getTableColumns(runs);
   const [row] = await db
     .select({
       id,
@@ -76,6 +81,10 @@ export async function describe(db: Db, runId: string): Promise<WorkRun | null> {
       attempt,
       blockCount,
       dispatchId,
+      part,
+      extendedFrom,
+      blocksBefore,
+      secondsSpent,
       nodeCount: revisions.nodeCount,
     })
     .from(runs)
@@ -119,7 +128,10 @@ export interface Plan {
   readonly blocks: readonly PlannedBlock[];
 }
 
-/** Stores the plan once and asks for its blocks. @returns whether this call stored it. */
+/**
+ * Stores the plan once and asks for its blocks; that of an extension adds blocks after those that
+ * are stored. @returns whether this call stored it.
+ */
 export async function storePlan(
   db: Db,
   fence: Fence,
@@ -127,19 +139,22 @@ export async function storePlan(
   mail: MailRule,
 ): Promise<boolean> {
   return db.transaction(async (tx) => {
+    const pairs = plan.blocks.reduce((sum, block) => sum + block.pairs, 0);
     const [run] = await tx
       .update(runs)
       .set({
         engineVersion: plan.engineVersion,
         estimate: plan.estimate,
         barcode: plan.barcode,
-        blockCount: plan.blocks.length,
+        blockCount: sql`${runs.blocksBefore} + ${plan.blocks.length}`,
+        pairsTotal: sql`${runs.pairsBefore} + ${pairs}`,
         heartbeatAt: sql`now()`,
       })
       .where(and(fenced(fence), eq(runs.state, 'running'), sql`${runs.blockCount} is null`))
-      .returning({ workspaceId: runs.workspaceId, dispatchId: runs.dispatchId });
+      .returning();
     if (!run) return false;
-    await insertPlan(tx, run.workspaceId, fence.runId, plan.blocks);
+    const { workspaceId, blocksBefore: first } = run;
+    await insertPlan(tx, { workspaceId, runId: fence.runId, first }, plan.blocks);
     if (plan.blocks.length === 0) {
       await endRun(tx, fence, { state: 'done', failure: null }, mail);
     } else {
@@ -155,6 +170,15 @@ export async function storePlan(
   });
 }
 
+export interface ComputedBlock {
+  readonly block: number;
+  readonly result: Uint8Array;
+  /** Names the worker process. */
+  readonly storedBy: string;
+  /** What a thread spent on it. */
+  readonly seconds: number;
+}
+
 /**
  * Stores the result of a block once; the last block ends the run in the same transaction.
  *
@@ -163,8 +187,7 @@ export async function storePlan(
 export async function storeBlock(
   db: Db,
   fence: Fence,
-  block: number,
-  result: Uint8Array,
+  { seconds, ...computed }: ComputedBlock,
   mail: MailRule,
 ): Promise<'stored' | 'last' | 'stale'> {
   return db.transaction(async (tx) => {
@@ -175,18 +198,15 @@ export async function storeBlock(
       .for('no key update');
     if (!run) return 'stale';
     const landed = run.blocksDone + 1;
-    const pairs = await fillBlock(tx, fence.runId, {
-      block,
-      result,
-      landed,
-      attempt: fence.attempt,
-    });
+    const { attempt } = fence;
+    const pairs = await fillBlock(tx, fence.runId, { ...computed, landed, attempt });
     if (pairs === null) return 'stale';
     await tx
       .update(runs)
       .set({
         blocksDone: landed,
         pairsDone: sql`${runs.pairsDone} + ${pairs}`,
+        secondsSpent: sql`${runs.secondsSpent} + ${seconds}`,
         heartbeatAt: sql`now()`,
       })
       .where(fenced(fence));

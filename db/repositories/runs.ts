@@ -1,10 +1,12 @@
-import { and, eq, inArray, sql } from 'drizzle-orm';
-import type { Scale } from '#contract/enums';
+import { and, desc, eq, inArray, ne, or, sql } from 'drizzle-orm';
+import { WHOLE, type RunFocus, type RunPart, type Scale } from '#contract/enums';
 import type { Db, Queryable } from '../client';
-import { datasets, revisions, runs, users } from '../schema/index';
+import { beats, datasets, revisions, runs, users } from '../schema/index';
 import { addToOutbox } from './outbox';
+import { partKey } from './runParts';
 import type { Scope } from './scope';
 
+export type { RunFocus };
 export type RunRow = typeof runs.$inferSelect;
 
 /** A run with what its page says about the network it was made from. */
@@ -16,6 +18,9 @@ export interface RunView extends Pick<
   | 'number'
   | 'scale'
   | 'dimensions'
+  | 'part'
+  | 'extendedFrom'
+  | 'blocksBefore'
   | 'engineVersion'
   | 'state'
   | 'pairsTotal'
@@ -41,12 +46,15 @@ export interface NewRun {
   readonly scale: Scale;
   /** Ascending. */
   readonly dimensions: readonly number[];
+  /** Canonical. */
+  readonly part: RunPart;
   /** The same key of the same person means the same run. */
   readonly idempotencyKey: string | null;
 }
 
+/** `repeated`: the same key. `found`: an equal run is stored or under way, so none was made. */
 export type CreatedRun =
-  | { readonly kind: 'created' | 'repeated'; readonly runId: string }
+  | { readonly kind: 'created' | 'repeated' | 'found'; readonly runId: string }
   | { readonly kind: 'no_revision' | 'other_parameters' };
 
 /** Tells every listener that a run has changed, when the transaction commits. */
@@ -65,7 +73,8 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
       const same =
         earlier.revisionId === wanted.revisionId &&
         earlier.scale === wanted.scale &&
-        earlier.dimensions.join() === wanted.dimensions.join();
+        earlier.dimensions.join() === wanted.dimensions.join() &&
+        [earlier.part, earlier.extendedFrom].some((part) => samePart(part, wanted.part));
       return same ? { kind: 'repeated', runId: earlier.id } : { kind: 'other_parameters' };
     }
     const [revision] = await tx
@@ -73,6 +82,9 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
       .from(revisions)
       .where(and(eq(revisions.workspaceId, workspaceId), eq(revisions.id, wanted.revisionId)));
     if (!revision) return { kind: 'no_revision' };
+    const equal = await findEqual(tx, workspaceId, wanted);
+    if (equal !== null) return { kind: 'found', runId: equal };
+    const { nodeCount } = revision;
     const [row] = await tx
       .insert(runs)
       .values({
@@ -81,8 +93,9 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
         number: sql`(select coalesce(max(number), 0) + 1 from runs where workspace_id = ${workspaceId})`,
         scale: wanted.scale,
         dimensions: [...wanted.dimensions],
+        part: wanted.part,
         attempt: 1,
-        pairsTotal: (revision.nodeCount * (revision.nodeCount - 1)) / 2,
+        pairsTotal: wanted.part.kind === 'whole' ? (nodeCount * (nodeCount - 1)) / 2 : 0,
         idempotencyKey: wanted.idempotencyKey,
         requestedBy: userId,
       })
@@ -97,6 +110,40 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
     await announceRun(tx, row.id);
     return { kind: 'created', runId: row.id };
   });
+}
+
+const samePart = (part: RunPart | null, wanted: RunPart): boolean =>
+  part !== null && partKey(part) === partKey(wanted);
+
+/**
+ * The newest run of the same revision, scale, dimensions and pairs that is done or under way, by the
+ * engine that the workers have now. One that was extended holds the pairs of its earlier part too.
+ */
+async function findEqual(
+  db: Queryable,
+  workspaceId: string,
+  { revisionId, scale, dimensions, part }: NewRun,
+): Promise<string | null> {
+  const wanted = sql`${JSON.stringify(part)}::jsonb`;
+  const current = sql`(select ${beats.engineVersion} from ${beats} where ${beats.name} = 'queue')`;
+  const [row] = await db
+    .select({ id: runs.id })
+    .from(runs)
+    .where(
+      and(
+        eq(runs.workspaceId, workspaceId),
+        eq(runs.revisionId, revisionId),
+        eq(runs.scale, scale),
+        eq(runs.dimensions, [...dimensions]),
+        or(eq(runs.part, wanted), eq(runs.extendedFrom, wanted)),
+        inArray(runs.state, ['queued', 'running', 'done']),
+        // Empty until it is planned, which the workers of now will do.
+        sql`${runs.engineVersion} in ('', coalesce(${current}, ${runs.engineVersion}))`,
+      ),
+    )
+    .orderBy(desc(runs.number))
+    .limit(1);
+  return row?.id ?? null;
 }
 
 /** Whether this person has a run under the key already. */
@@ -129,6 +176,9 @@ export async function findRun(db: Queryable, scope: Scope, runId: string): Promi
       number: runs.number,
       scale: runs.scale,
       dimensions: runs.dimensions,
+      part: runs.part,
+      extendedFrom: runs.extendedFrom,
+      blocksBefore: runs.blocksBefore,
       engineVersion: runs.engineVersion,
       state: runs.state,
       pairsTotal: runs.pairsTotal,
@@ -161,6 +211,7 @@ export type RunProgress = Pick<
   | 'state'
   | 'pairsDone'
   | 'pairsTotal'
+  | 'pairsBefore'
   | 'blockCount'
   | 'blocksDone'
   | 'failureCode'
@@ -180,6 +231,7 @@ export async function findProgress(
       state: runs.state,
       pairsDone: runs.pairsDone,
       pairsTotal: runs.pairsTotal,
+      pairsBefore: runs.pairsBefore,
       blockCount: runs.blockCount,
       blocksDone: runs.blocksDone,
       failureCode: runs.failureCode,
@@ -222,5 +274,91 @@ export async function stopRun(db: Db, scope: Scope, runId: string): Promise<bool
       .returning({ id: runs.id });
     if (stopped.length > 0) await announceRun(tx, runId);
     return stopped.length > 0;
+  });
+}
+
+/**
+ * Makes a finished part run whole: what is stored stays, and a plan of the other pairs is asked for.
+ * An extension that was stopped or failed is taken up again where it was.
+ *
+ * @returns whether this call did
+ */
+export async function extendRun(db: Db, scope: Scope, runId: string): Promise<boolean> {
+  return db.transaction(async (tx) => {
+    const mine = and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId));
+    const again = {
+      state: 'queued' as const,
+      attempt: sql`${runs.attempt} + 1`,
+      dispatchId: sql`gen_random_uuid()`,
+      dispatchedAt: sql`now()`,
+      heartbeatAt: null,
+      startedAt: null,
+      finishedAt: null,
+      failureCode: null,
+      failureMessage: null,
+    };
+    const [extended] = await tx
+      .update(runs)
+      .set({
+        ...again,
+        extendedFrom: runs.part,
+        part: WHOLE,
+        blocksBefore: runs.blocksDone,
+        pairsBefore: runs.pairsDone,
+        blockCount: null,
+        pairsTotal: sql`(select node_count * (node_count - 1) / 2 from revisions
+          where revisions.id = ${runs.revisionId})`,
+      })
+      .where(and(mine, eq(runs.state, 'done'), ne(runs.part, WHOLE)))
+      .returning();
+    const [resumed] = extended
+      ? []
+      : await tx
+          .update(runs)
+          .set(again)
+          .where(
+            and(
+              mine,
+              inArray(runs.state, ['stopped', 'failed']),
+              sql`${runs.extendedFrom} is not null`,
+            ),
+          )
+          .returning();
+    const run = extended ?? resumed;
+    if (!run) return false;
+    const kind = run.blockCount === null ? 'plan' : 'blocks';
+    const payload = { runId, attempt: run.attempt };
+    await addToOutbox(tx, scope.workspaceId, { kind, payload }, run.dispatchId);
+    await announceRun(tx, runId);
+    return true;
+  });
+}
+
+/**
+ * Stores what a reader looks at and asks that its pairs go first.
+ * @returns false if the run is over or not there
+ */
+export async function setFocus(
+  db: Db,
+  scope: Scope,
+  runId: string,
+  focus: RunFocus,
+): Promise<boolean> {
+  return db.transaction(async (tx) => {
+    const [run] = await tx
+      .update(runs)
+      .set({ focus })
+      .where(
+        and(
+          eq(runs.workspaceId, scope.workspaceId),
+          eq(runs.id, runId),
+          inArray(runs.state, ['queued', 'running']),
+        ),
+      )
+      .returning({ attempt: runs.attempt });
+    if (!run) return false;
+    const payload = { runId, attempt: run.attempt };
+    await addToOutbox(tx, scope.workspaceId, { kind: 'focus', payload });
+    return true;
   });
 }

@@ -13,4 +13,5 @@ export const outboxKindEnum = pgEnum('outbox_kind', [
   'mail',
   'beat',
   'estimate',
+  'focus',
 ]);

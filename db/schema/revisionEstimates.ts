@@ -1,9 +1,10 @@
 import { foreignKey, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core';
+import type { RunPart } from '#contract/enums';
 import { moment } from './columns';
 import { revisions } from './revisions';
 
 /**
- * What a run of a revision would need, by highest dimension; `estimate` or `failure` is set when a
+ * What a run of a revision would need, by highest dimension and part; `estimate` or `failure` is set when a
  * worker has answered.
  */
 export const revisionEstimates = pgTable(
@@ -13,7 +14,10 @@ export const revisionEstimates = pgTable(
     revisionId: uuid('revision_id').notNull(),
     /** D, 0..3. */
     maxDimension: integer('max_dimension').notNull(),
-    /** Contract: runEstimate without `maxDimension` and `refusal`. */
+    /** Names the part: the same key always means the same pairs. */
+    partKey: text('part_key').notNull(),
+    part: jsonb('part').$type<RunPart>().notNull(),
+    /** Contract: runEstimate without `maxDimension`, `part` and `refusal`. */
     estimate: jsonb('estimate'),
     failure: text('failure'),
     /** How often a worker has begun to answer; past a limit the answer is a failure. */
@@ -23,7 +27,10 @@ export const revisionEstimates = pgTable(
     askedAt: moment('asked_at').notNull().defaultNow(),
   },
   (table) => [
-    primaryKey({ columns: [table.workspaceId, table.revisionId, table.maxDimension] }),
+    primaryKey({
+      name: 'revision_estimates_pk',
+      columns: [table.workspaceId, table.revisionId, table.maxDimension, table.partKey],
+    }),
     foreignKey({
       columns: [table.workspaceId, table.revisionId],
       foreignColumns: [revisions.workspaceId, revisions.id],

@@ -1,20 +1,24 @@
+import { decodeBlockPairs, type BlockPairs } from '../../db/codecs/blockPairs';
 import { encodeBlockResult } from '../../db/codecs/blockResult';
-import { decodeUint32 } from '../../db/codecs/typedArrays';
-import { findMissingRows } from '../../db/repositories/runBlocks';
+import { findMissingPairs } from '../../db/repositories/runBlocks';
 import { claimRun, failRun, finishIfComplete, storeBlock } from '../../db/repositories/runWork';
 import { ENGINE_VERSION } from '../engine/index';
+import type { PairResults } from '../engine/types';
+import type { Pool } from '../pool/pool';
+import type { Outcome, Subject } from '../pool/tasks';
 import type { Payload } from '../queue/jobs';
 import type { Context } from './context';
 import { settle } from './outcome';
 import { subjectOf } from './subject';
+import { overTime, runSignal } from './timeLimit';
 
 /** Computes one block of pairs and stores it, unless somebody has. */
 export async function block(payload: Payload<'block'>, context: Context): Promise<void> {
-  const { db, activity, pool, mailRule } = context;
+  const { db, activity, pool, config, mailRule, workerName } = context;
   const fence = { runId: payload.runId, attempt: payload.attempt };
   const run = await claimRun(db, fence);
   if (!run) return;
-  const stored = await findMissingRows(db, fence.runId, payload.block);
+  const stored = await findMissingPairs(db, fence.runId, payload.block);
   if (!stored) return;
   if (run.engineVersion !== ENGINE_VERSION) {
     // Two versions must not fill one matrix: its bytes would depend on who computed what.
@@ -25,14 +29,26 @@ export async function block(payload: Payload<'block'>, context: Context): Promis
   const subject = await subjectOf(run, context);
   if (!subject) return;
   await activity.during(fence, async (signal) => {
-    const outcome = await pool.run<'rows'>(
-      { kind: 'rows', subject, rows: decodeUint32(stored) },
-      signal,
-    );
+    const limited = runSignal(run, config, signal);
+    const outcome = await compute(pool, subject, decodeBlockPairs(stored), limited.signal);
+    if (limited.isOver()) return void (await failRun(db, fence, overTime(config), mailRule));
     if (outcome.kind !== 'finished') return settle(outcome, fence, context);
-    await storeBlock(db, fence, payload.block, encodeBlockResult(outcome.result), mailRule);
+    const { result, seconds = 0 } = outcome;
+    const computed = { block: payload.block, result: encodeBlockResult(result), seconds };
+    await storeBlock(db, fence, { ...computed, storedBy: workerName }, mailRule);
   });
 }
+
+/** Whole rows go to the thread as rows; a list of all their pairs would say nothing more. */
+const compute = (
+  pool: Pool,
+  subject: Subject,
+  { rows, choice }: BlockPairs,
+  signal: AbortSignal,
+): Promise<Outcome<PairResults>> =>
+  choice === null
+    ? pool.run<'rows'>({ kind: 'rows', subject, rows }, signal)
+    : pool.run<'pairs'>({ kind: 'pairs', subject, choice: { rows, ...choice } }, signal);
 
 /** When every block has ended: the last one has ended the run too, so this finds nothing to do. */
 export async function finish(

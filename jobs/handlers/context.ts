@@ -18,4 +18,6 @@ export interface Context {
   /** A thread kept free for whoever clicked on a pair. */
   readonly pairPool: Pool;
   readonly mailRule: MailRule;
+  /** Names this worker process in what it stores. */
+  readonly workerName: string;
 }

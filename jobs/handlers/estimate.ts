@@ -1,5 +1,7 @@
 import { answerEstimate, claimEstimate } from '../../db/repositories/revisionEstimates';
+import { readIntervals } from '../../db/repositories/runParts';
 import { ESTIMATE_MARGIN, ESTIMATE_START_UP } from '../engine/index';
+import { enginePart } from '../parts';
 import type { Payload } from '../queue/jobs';
 import type { Context } from './context';
 import { failureOf } from './outcome';
@@ -10,11 +12,11 @@ const LONGEST = 60_000;
 
 /** Counts what a run of a revision would need and stores the answer for whoever waits. */
 export async function estimate(
-  { revisionId, maxDimension }: Payload<'estimate'>,
+  { revisionId, maxDimension, partKey }: Payload<'estimate'>,
   context: Context,
 ): Promise<void> {
   const { db, networks, pairPool, config, log, activity } = context;
-  const question = { revisionId, maxDimension };
+  const question = { revisionId, maxDimension, partKey };
   const refuse = (failure: string) => answerEstimate(db, question, { failure });
   const claimed = await claimEstimate(db, question);
   if (claimed === null) return;
@@ -26,19 +28,24 @@ export async function estimate(
   const network = await networks.of(wanted);
   if (!network) return;
   const { limits } = config;
+  const budget = { ...limits, seconds: config.mostSeconds };
+  const nodes = await readIntervals(db, claimed.workspaceId, revisionId);
+  const part = enginePart(claimed.part, nodes);
+  const overlapping = enginePart({ kind: 'overlapping' }, nodes);
   const subject = { key: `${revisionId} entry ${maxDimension}`, network, maxDimension, limits };
   const outcome = await pairPool.run<'estimate'>(
-    { kind: 'estimate', subject },
+    { kind: 'estimate', subject, budget, part, overlapping },
     AbortSignal.any([AbortSignal.timeout(LONGEST), activity.closing]),
   );
   switch (outcome.kind) {
     case 'finished':
       return answerEstimate(db, question, {
         estimate: {
-          ...outcome.result,
+          ...outcome.result.estimate,
+          ways: outcome.result.ways,
           margin: ESTIMATE_MARGIN,
           startUp: ESTIMATE_START_UP,
-          allowed: limits,
+          allowed: budget,
         },
       });
     case 'stopped':

@@ -1,5 +1,17 @@
-import type { PreparedData } from '../engine/index';
-import type { Barcode, Estimate, Limits, Network, PairDetail, RowResults } from '../engine/types';
+import type { Block, PreparedData } from '../engine/index';
+import type {
+  Barcode,
+  Budget,
+  Estimate,
+  Limits,
+  Network,
+  PairChoice,
+  PairDetail,
+  PairResults,
+  Part,
+  RowResults,
+  Ways,
+} from '../engine/types';
 
 /** What a thread needs to prepare a run. */
 export interface Subject {
@@ -15,8 +27,13 @@ export interface PlanResult {
   readonly engineVersion: string;
   readonly estimate: Estimate;
   readonly barcode: Barcode;
-  /** Arrival positions of each block. */
-  readonly blocks: readonly Uint32Array[];
+  readonly blocks: readonly Block[];
+}
+
+export interface EstimateResult {
+  readonly estimate: Estimate;
+  /** Null where it is within the budget. */
+  readonly ways: Ways | null;
 }
 
 /** Answer of a swap with the similarity over the chosen dimensions. */
@@ -33,9 +50,22 @@ export type Task = {
   readonly tables: PreparedData | null;
 } & (
   | { readonly kind: 'prepare' }
-  | { readonly kind: 'plan'; readonly secondsPerBlock: number }
-  | { readonly kind: 'estimate' }
+  | {
+      readonly kind: 'plan';
+      readonly secondsPerBlock: number;
+      readonly part: Part;
+      /** A part of which every pair is stored: only the others are planned. */
+      readonly stored: Part | null;
+    }
+  | {
+      readonly kind: 'estimate';
+      readonly budget: Budget;
+      readonly part: Part;
+      /** The pairs of overlapping intervals, as a way out. */
+      readonly overlapping: Part;
+    }
   | { readonly kind: 'rows'; readonly rows: Uint32Array }
+  | { readonly kind: 'pairs'; readonly choice: PairChoice }
   | {
       readonly kind: 'pair';
       readonly p: number;
@@ -53,13 +83,16 @@ export type ResultOf<K extends Task['kind']> = K extends 'prepare'
     ? PlanResult
     : K extends 'rows'
       ? RowResults
-      : K extends 'estimate'
-        ? Estimate
-        : PairResult;
+      : K extends 'pairs'
+        ? PairResults
+        : K extends 'estimate'
+          ? EstimateResult
+          : PairResult;
 
 /** Errors do not keep their class on the way out of a thread: the outcome says what happened. */
 export type Outcome<R> =
-  | { readonly kind: 'finished'; readonly result: R }
+  /** `seconds` is what a thread spent on it. */
+  | { readonly kind: 'finished'; readonly result: R; readonly seconds?: number }
   | { readonly kind: 'stopped' }
   /** The input or its size is at fault; the message is a plain sentence. */
   | { readonly kind: 'refused'; readonly code: string; readonly message: string }

@@ -1,19 +1,23 @@
 import {
   ENGINE_VERSION,
   adoptPrepared,
+  computePairs,
   computeRows,
   estimate,
-  planBlocks,
+  partnersOf,
+  planPairs,
   prepare,
   preparedData,
   recordedBarcode,
+  remainderOf,
   similarity,
   swapDetail,
+  waysOut,
   type Prepared,
   type PreparedData,
 } from '../engine/index';
 import { EngineInputError, EngineLimitError, EngineStopped, type Control } from '../engine/types';
-import type { Outcome, PairResult, PlanResult, ResultOf, Task } from './tasks';
+import type { EstimateResult, Outcome, PairResult, PlanResult, ResultOf, Task } from './tasks';
 
 /** Prepared networks with this thread's own buffers, by subject, the latest used last. */
 const kept = new Map<string, Prepared>();
@@ -46,14 +50,25 @@ function prepareShared({ subject }: Task, control: Control): PreparedData {
 
 function plan(task: Task & { kind: 'plan' }): PlanResult {
   const { network, maxDimension, limits } = task.subject;
-  const estimated = estimate(network, maxDimension, limits);
+  const estimated = estimate(network, maxDimension, limits, task.part);
+  const partners = task.stored
+    ? remainderOf(partnersOf(task.stored, network.nodeCount))
+    : partnersOf(task.part, network.nodeCount);
   const prepared = preparedFor(task);
   return {
     engineVersion: ENGINE_VERSION,
     estimate: estimated,
     barcode: recordedBarcode(prepared),
-    blocks: planBlocks(prepared, task.secondsPerBlock),
+    blocks: planPairs(prepared, task.secondsPerBlock, partners),
   };
+}
+
+function estimated(task: Task & { kind: 'estimate' }): EstimateResult {
+  const { network, maxDimension, limits } = task.subject;
+  const { part, overlapping, budget } = task;
+  const needed = estimate(network, maxDimension, limits, part);
+  const ways = waysOut({ network, maxDimension, part, overlapping }, needed, budget);
+  return { estimate: needed, ways };
 }
 
 function pair(task: Task & { kind: 'pair' }): PairResult {
@@ -69,9 +84,11 @@ function run(task: Task): ResultOf<Task['kind']> {
     case 'plan':
       return plan(task);
     case 'estimate':
-      return estimate(task.subject.network, task.subject.maxDimension, task.subject.limits);
+      return estimated(task);
     case 'rows':
       return computeRows(preparedFor(task), task.rows, control);
+    case 'pairs':
+      return computePairs(preparedFor(task), task.choice, control);
     case 'pair':
       return pair(task);
   }
@@ -79,8 +96,10 @@ function run(task: Task): ResultOf<Task['kind']> {
 
 /** One task of the pool. */
 export default function work(task: Task): Outcome<ResultOf<Task['kind']>> {
+  const from = performance.now();
   try {
-    return { kind: 'finished', result: run(task) };
+    const result = run(task);
+    return { kind: 'finished', result, seconds: (performance.now() - from) / 1000 };
   } catch (error) {
     if (error instanceof EngineStopped) return { kind: 'stopped' };
     if (error instanceof EngineLimitError) {

@@ -21,6 +21,8 @@ export const PAYLOADS = {
     v: version,
     revisionId: id,
     maxDimension: z.number().int().min(0).max(3),
+    /** Names the part; jobs of before parts had none. */
+    partKey: z.string().max(100).default('whole'),
   }),
   /** Send one message. */
   mail: z.strictObject({ v: version, mailId: id }),

@@ -12,6 +12,8 @@ export interface Producer {
   add(job: JobRequest): Promise<void>;
   /** One flow: the parent becomes ready when every child has ended. */
   addFlow(parent: JobRequest, children: readonly JobRequest[]): Promise<void>;
+  /** Puts waiting jobs before all others of their queue, the first of them first; others are passed over. */
+  hurry(queue: QueueName, jobIds: readonly string[]): Promise<void>;
   /** BullMQ's word for where the job stands, `unknown` if there is none. */
   stateOf(queue: QueueName, jobId: string): Promise<string>;
   close(): Promise<void>;
@@ -83,6 +85,16 @@ export function openProducer({ redisUrl, prefix, onError }: QueueConnection): Pr
     },
     async addFlow(parent, children) {
       await withinDeadline(flows.add({ ...parts(parent), children: children.map(parts) }));
+    },
+    async hurry(name, jobIds) {
+      const queue = queueOf(name);
+      for (const jobId of [...jobIds].reverse()) {
+        const job = await withinDeadline(queue.getJob(jobId));
+        // One that was taken or is done meanwhile stays where it is.
+        if (job && (await withinDeadline(job.getState())) === 'waiting') {
+          await withinDeadline(job.changePriority({ priority: 0, lifo: true }));
+        }
+      }
     },
     stateOf: (queue, jobId) => withinDeadline(queueOf(queue).getJobState(jobId)),
     async close() {

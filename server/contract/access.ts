@@ -9,7 +9,7 @@ import type { Role } from './enums';
 export type Access = 'public' | 'account' | readonly Role[];
 
 export interface RouteRule {
-  readonly method: 'get' | 'post' | 'patch' | 'delete';
+  readonly method: 'get' | 'post' | 'put' | 'patch' | 'delete';
   readonly path: string;
   readonly access: Access;
   readonly summary: string;
@@ -93,6 +93,18 @@ export const ROUTES = {
     path: `${W}/runs/:runId/stop`,
     access: EDITORS,
     summary: 'Stop a run',
+  },
+  extendRun: {
+    method: 'post',
+    path: `${W}/runs/:runId/extend`,
+    access: EDITORS,
+    summary: 'Compute the other pairs of a part run',
+  },
+  focusRun: {
+    method: 'put',
+    path: `${W}/runs/:runId/focus`,
+    access: EVERYONE,
+    summary: 'Compute first what I look at',
   },
   runEvents: {
     method: 'get',

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { entryUnitSchema, runStateSchema, scaleSchema } from './enums';
+import { entryUnitSchema, runPartSchema, runStateSchema, scaleSchema } from './enums';
 
 export const UPLOAD_LIMITS = {
   /** Bytes of one file. */
@@ -58,6 +58,7 @@ export const runBrief = z.strictObject({
   revisionNumber: z.number().int().positive(),
   scale: scaleSchema,
   dimensions: z.array(z.number().int()),
+  part: runPartSchema,
   state: runStateSchema,
   createdAt: z.iso.datetime(),
 });

@@ -27,3 +27,43 @@ export type GroupOrigin = z.infer<typeof groupOriginSchema>;
 
 /** The highest homology dimension the engine computes. */
 export const MAX_DIMENSION = 3;
+
+/** What a chosen part may name; more is a longer address than servers take. */
+export const CHOSEN_LIMITS = { windows: 20, nodes: 100, pairs: 200 } as const;
+
+const place = z.number().int().nonnegative();
+
+/**
+ * Which pairs a run covers: all, those at most so many arrival positions apart, those whose entry
+ * intervals [earliest, latest] overlap, or chosen ones. Windows are first and last arrival position
+ * (0 = first to arrive); nodes and pairs are node rows.
+ */
+export const runPartSchema = z.discriminatedUnion('kind', [
+  z.strictObject({ kind: z.literal('whole') }),
+  z.strictObject({ kind: z.literal('within'), positions: z.number().int().min(1).max(1_000_000) }),
+  z.strictObject({ kind: z.literal('overlapping') }),
+  z.strictObject({
+    kind: z.literal('chosen'),
+    windows: z
+      .array(
+        z
+          .tuple([place, place])
+          .refine(([from, to]) => from < to, 'A window needs a first and a later last position.'),
+      )
+      .max(CHOSEN_LIMITS.windows)
+      .default([]),
+    nodes: z.array(place).max(CHOSEN_LIMITS.nodes).default([]),
+    pairs: z
+      .array(z.tuple([place, place]).refine(([a, b]) => a !== b, 'A pair needs two nodes.'))
+      .max(CHOSEN_LIMITS.pairs)
+      .default([]),
+  }),
+]);
+export type RunPart = z.infer<typeof runPartSchema>;
+export const WHOLE: RunPart = { kind: 'whole' };
+
+/** What a reader looks at while a run goes, in arrival positions; those pairs are computed first. */
+export type RunFocus =
+  | { readonly kind: 'node'; readonly p: number }
+  | { readonly kind: 'pair'; readonly p: number; readonly q: number }
+  | { readonly kind: 'window'; readonly from: number; readonly to: number };

@@ -44,6 +44,7 @@ function presentRunBrief(row: RunBriefRow): RunBrief {
     revisionNumber: row.revisionNumber,
     scale: row.scale,
     dimensions: row.dimensions,
+    part: row.part,
     state: row.state,
     createdAt: row.createdAt.toISOString(),
   };

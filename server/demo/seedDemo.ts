@@ -1,5 +1,6 @@
 import { Readable } from 'node:stream';
 import { UPLOAD_LIMITS } from '#contract/datasets';
+import { WHOLE } from '#contract/enums';
 import type { Db } from '../../db/client';
 import { insertMember, listMemberships } from '../../db/repositories/memberships';
 import type { Scope } from '../../db/repositories/scope';
@@ -89,7 +90,8 @@ async function makeRun(db: Db, scope: Scope): Promise<void> {
   const shown = (await datasetsOf(db, scope)).find(({ dataset }) => dataset.name === SHOWN);
   const revision = shown?.revisions[0];
   if (!shown || !revision || shown.runs.length > 0) return;
-  const wanted = { revisionId: revision.id, scale: 'rank' as const, dimensions: [1, 2, 3] };
+  const chosen = { scale: 'rank' as const, dimensions: [1, 2, 3], part: WHOLE };
+  const wanted = { revisionId: revision.id, ...chosen };
   await startRun(db, scope, wanted, 'demo');
 }
 

@@ -8,7 +8,7 @@ import { send } from './send';
 import type { Route, RouteMap } from './route';
 import { z } from 'zod';
 
-const METHODS = new Set(['get', 'post', 'patch', 'delete']);
+const METHODS = new Set(['get', 'post', 'put', 'patch', 'delete']);
 const workspaceOnly = z.strictObject({ workspaceId: z.uuid() });
 
 /**

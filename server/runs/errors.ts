@@ -31,6 +31,16 @@ export const notDone = (state: string) =>
 export const alreadyOver = (state: string) =>
   new Failure('conflict', 'runs.already_over', `The run is ${state} already; nothing was changed.`);
 
+export const nothingToExtend = (why: string) =>
+  new Failure('conflict', 'runs.nothing_to_extend', why);
+
+export const nothingToFocus = (state: string) =>
+  new Failure(
+    'conflict',
+    'runs.nothing_left',
+    `The run is ${state}; nothing is computed first any more.`,
+  );
+
 /** The sentence says the number and the ways out. */
 export const tooLarge = (sentence: string) => new Failure('invalid', 'runs.too_large', sentence);
 

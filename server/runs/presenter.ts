@@ -25,6 +25,8 @@ export function presentRun(row: RunView, landed: readonly number[]): Run {
     number: row.number,
     scale: row.scale,
     dimensions: row.dimensions,
+    part: row.part,
+    extendedFrom: row.extendedFrom,
     engineVersion: row.engineVersion,
     state: row.state,
     nodeCount: row.nodeCount,
@@ -59,11 +61,12 @@ export function presentProgress(
   };
 }
 
-/** Pairs left at the mean speed so far; null without one, or once the run is over. */
+/** Pairs left at the mean speed since the run, or its extension, began; null without one. */
 function millisecondsLeft(progress: RunProgress): number | null {
-  const { state, pairsDone, pairsTotal, runningFor } = progress;
-  if (state !== 'running' || runningFor === null || pairsDone === 0) return null;
-  return Math.round((runningFor / pairsDone) * (pairsTotal - pairsDone));
+  const { state, pairsDone, pairsTotal, pairsBefore, runningFor } = progress;
+  const lately = pairsDone - pairsBefore;
+  if (state !== 'running' || runningFor === null || lately === 0) return null;
+  return Math.round((runningFor / lately) * (pairsTotal - pairsDone));
 }
 
 export const presentBars = ({ births, deaths }: StoredBars): WireBars =>

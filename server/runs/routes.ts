@@ -2,7 +2,7 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import type { Response } from 'express';
 import { z } from 'zod';
-import { createRunRequest, estimateQuery } from '#contract/runs';
+import { createRunRequest, estimateQuery, runFocusRequest } from '#contract/runs';
 import { csvLines, type Cell } from '../../formats/csv';
 import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable } from '../../formats/matrixTable';
 import { decodeBarcode } from '../../db/codecs/barcode';
@@ -14,7 +14,7 @@ import type { Scope } from '../../db/repositories/scope';
 import type { Dependencies } from '../dependencies';
 import { nameDownload } from '../http/download';
 import { notFound } from '../http/parse';
-import { created, ok, route, SENT } from '../http/route';
+import { created, done, ok, route, SENT } from '../http/route';
 import type { RunRoutes } from '../routes';
 import { notDone, notPlanned } from './errors';
 import { readEstimate } from './estimates';
@@ -23,7 +23,7 @@ import { matrixRows, readBlockBytes } from './matrix';
 import { readPair } from './pairs';
 import { presentBars } from './presenter';
 import { pairsOfRows } from './tables';
-import { endRun, readRun, requireRun, startRun } from './usecases';
+import { completeRun, endRun, focusRun, readRun, requireRun, startRun } from './usecases';
 import { RunWatches } from './watches';
 
 const count = z
@@ -43,20 +43,37 @@ export const makeRunRoutes =
       log.warn({ err: error }, 'a watched run could not be read'),
     );
     return {
-      createRun: route('createRun', { body: createRunRequest }, async ({ member, body, request }) =>
-        created(await startRun(db, member, body, request.get('idempotency-key') ?? null)),
+      createRun: route(
+        'createRun',
+        { body: createRunRequest },
+        async ({ member, body, request }) => {
+          const key = request.get('idempotency-key') ?? null;
+          const started = await startRun(db, member, body, key);
+          return started.found ? ok(started) : created(started);
+        },
       ),
       runEstimate: route(
         'runEstimate',
         { params: oneRevision, query: estimateQuery },
-        async ({ member, params: { revisionId }, query: { maxDimension }, signal }) =>
-          ok(await readEstimate(db, listener, member, { revisionId, maxDimension }, signal)),
+        async ({ member, params: { revisionId }, query, signal }) =>
+          ok(await readEstimate(db, listener, member, { revisionId, ...query }, signal)),
       ),
       run: route('run', { params: oneRun }, async ({ member, params }) =>
         ok(await readRun(db, member, params.runId)),
       ),
       stopRun: route('stopRun', { params: oneRun }, async ({ member, params }) =>
         ok(await endRun(db, member, params.runId)),
+      ),
+      extendRun: route('extendRun', { params: oneRun }, async ({ member, params }) =>
+        ok(await completeRun(db, member, params.runId)),
+      ),
+      focusRun: route(
+        'focusRun',
+        { params: oneRun, body: runFocusRequest },
+        async ({ member, params, body }) => {
+          await focusRun(db, member, params.runId, body);
+          return done;
+        },
       ),
       runEvents: route('runEvents', { params: oneRun }, async ({ member, params, ...stream }) => {
         await requireRun(db, member, params.runId);
@@ -87,9 +104,13 @@ export const makeRunRoutes =
         { params: oneRun },
         async ({ member, params, response }) => {
           const run = await requireRun(db, member, params.runId);
-          if (run.state !== 'done') throw notDone(run.state);
+          const { id: runId, nodeCount, blocksBefore } = run;
+          const isDone = run.state === 'done';
+          // While it is extended, a run has the pairs it had before.
+          if (!isDone && run.extendedFrom === null) throw notDone(run.state);
           const nodes = await listNodes(db, member, run.revisionId);
-          const rows = matrixRows(db, member, run.id, run.nodeCount);
+          const blocks = isDone ? (run.blockCount ?? 0) : blocksBefore;
+          const rows = matrixRows(db, member, { runId, nodeCount, blocks });
           const { scale, dimensions } = run;
           const table = pairsOfRows({ nodes, scale, dimensions, rows });
           return sendCsv(

@@ -72,7 +72,7 @@ export function parseAnswer<T>(schema: z.ZodType<T>, text: string): T {
 }
 
 export interface Options {
-  readonly method?: 'GET' | 'POST' | 'PATCH' | 'DELETE';
+  readonly method?: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
   /** Sent as JSON. */
   readonly body?: unknown;
   readonly signal?: AbortSignal | undefined;

@@ -60,6 +60,7 @@ export class SwapMatrix {
           `${nodeCount} nodes and ${this.dimensionCount} dimensions.`,
       );
     }
+    if (block.choice !== null) return this.#placeChosen(block, block.choice, stored);
     let read = 0;
     for (const p of block.rows) {
       const width = nodeCount - 1 - p;
@@ -69,12 +70,32 @@ export class SwapMatrix {
         this.distances.set(block.distances.subarray(from, from + width), k * pairCount + write);
         this.bettiGaps.set(block.bettiGaps.subarray(from, from + width), k * pairCount + write);
       }
-      for (let i = write; i < write + width; i += 1) {
-        if (this.known[i] === 0) this.knownCount += 1;
-        this.known[i] = 1;
-      }
+      for (let i = write; i < write + width; i += 1) this.#know(i);
       read += width;
     }
+  }
+
+  #placeChosen(
+    { rows, pairCount, distances, bettiGaps }: MatrixBlock,
+    { starts, partners }: NonNullable<MatrixBlock['choice']>,
+    stored: number,
+  ): void {
+    for (const [i, p] of rows.entries()) {
+      const end = starts[i + 1] ?? 0;
+      for (let read = starts[i] ?? 0; read < end; read += 1) {
+        const write = pairIndex(this.nodeCount, p, partners[read] ?? 0);
+        for (let k = 0; k < stored; k += 1) {
+          this.distances[k * this.pairCount + write] = distances[k * pairCount + read] ?? 0;
+          this.bettiGaps[k * this.pairCount + write] = bettiGaps[k * pairCount + read] ?? 0;
+        }
+        this.#know(write);
+      }
+    }
+  }
+
+  #know(index: number): void {
+    if (this.known[index] === 0) this.knownCount += 1;
+    this.known[index] = 1;
   }
 
   isKnown(p: number, q: number): boolean {

@@ -3,7 +3,7 @@ import { defineStore } from 'pinia';
 import type { RunBrief } from '#contract/datasets';
 import type { RunState } from '#contract/enums';
 import type { ProgressEvent } from '#contract/progress';
-import type { CreateRunRequest, Run, RunEstimate } from '#contract/runs';
+import type { CreateRunRequest, RunEstimate, StartedRun } from '#contract/runs';
 import { followRun } from '../api/progress';
 import * as api from '../api/runs';
 
@@ -56,14 +56,22 @@ export const useRunsStore = defineStore('runs', () => {
     progress.value[runId] = known;
   }
 
-  const start = (workspaceId: string, body: CreateRunRequest, key: string): Promise<Run> =>
-    api.createRun(workspaceId, body, key);
+  /** The run that answered the latest wish because it had been computed before. */
+  const found = ref<string | null>(null);
 
-  const estimate = (
+  /** Starts a run, or finds one that is equal: nothing is computed twice. */
+  async function start(
     workspaceId: string,
-    revisionId: string,
-    maxDimension: number,
-  ): Promise<RunEstimate> => api.getEstimate(workspaceId, revisionId, maxDimension);
+    body: CreateRunRequest,
+    key: string,
+  ): Promise<StartedRun> {
+    const run = await api.createRun(workspaceId, body, key);
+    found.value = run.found ? run.id : null;
+    return run;
+  }
+
+  const estimate = (workspaceId: string, wanted: api.EstimateWanted): Promise<RunEstimate> =>
+    api.getEstimate(workspaceId, wanted);
 
   async function stop(workspaceId: string, runId: string): Promise<void> {
     const run = await api.stopRun(workspaceId, runId);
@@ -74,5 +82,5 @@ export const useRunsStore = defineStore('runs', () => {
   /** The latest known state of a run of a list. */
   const stateOf = (run: RunBrief): RunState => progress.value[run.id]?.state ?? run.state;
 
-  return { progress, follow, recall, start, estimate, stop, stateOf };
+  return { progress, found, follow, recall, start, estimate, stop, stateOf };
 });

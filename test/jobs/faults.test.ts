@@ -11,13 +11,12 @@ import { storedHash } from '../support/wholeMatrix';
 describe('a worker', () => {
   let workshop: Workshop;
   let network: Network;
-  let subject: Subject;
   let undisturbed: string;
 
   beforeAll(async () => {
     workshop = await Workshop.open(FLUSHABLE_REDIS);
     network = networkTaking(4);
-    subject = await workshop.bring(network);
+    const subject = await workshop.bring(network);
     const worker = workshop.startWorker({ HEDDLE_THREADS: '2' });
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ state }) => state === 'done', 60);
@@ -27,10 +26,11 @@ describe('a worker', () => {
   afterEach(() => workshop.endWorkers());
   afterAll(() => workshop.close());
 
-  const done = (runId: string) =>
-    workshop.reached(subject.scope, runId, ({ state }) => state === 'done', 50);
+  const done = ({ scope }: Subject, runId: string) =>
+    workshop.reached(scope, runId, ({ state }) => state === 'done', 50);
 
   test('killed mid-run, five times, is followed by one that ends with the same bytes', async () => {
+    const subject = await workshop.bring(network);
     const runId = await workshop.submit(subject);
     let resumedAfter = 0;
     for (let kill = 0; kill < 5; kill++) {
@@ -49,13 +49,14 @@ describe('a worker', () => {
       await once(child, 'exit');
     }
     workshop.spawnWorker();
-    await done(runId);
+    await done(subject, runId);
     expect(await storedHash(workshop.db, subject.scope, runId)).toBe(undisturbed);
     expect(resumedAfter).toBeLessThan(16_000);
   }, 110_000);
 
   test('told to end hands its blocks to another within ten seconds', async () => {
     const first = workshop.spawnWorker();
+    const subject = await workshop.bring(network);
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ blocksDone }) => blocksDone > 0);
     workshop.spawnWorker();
@@ -64,7 +65,7 @@ describe('a worker', () => {
     await once(first, 'exit');
     expect(performance.now() - from).toBeLessThan(10_000);
     expect(first.exitCode).toBe(0);
-    await done(runId);
+    await done(subject, runId);
     expect(await storedHash(workshop.db, subject.scope, runId)).toBe(undisturbed);
     const run = await findRun(workshop.db, subject.scope, runId);
     expect(run?.state).toBe('done');
@@ -73,8 +74,9 @@ describe('a worker', () => {
   test('shares a run with another, and every block is stored once', async () => {
     workshop.startWorker();
     workshop.startWorker();
+    const subject = await workshop.bring(network);
     const runId = await workshop.submit(subject);
-    await done(runId);
+    await done(subject, runId);
     expect(await storedHash(workshop.db, subject.scope, runId)).toBe(undisturbed);
     const blocks = await workshop.db.select().from(runBlocks).where(eq(runBlocks.runId, runId));
     expect(new Set(blocks.map(({ landed }) => landed)).size).toBe(blocks.length);
@@ -82,10 +84,11 @@ describe('a worker', () => {
 
   test('finishes a run although the queue is emptied under it', async () => {
     workshop.startWorker();
+    const subject = await workshop.bring(network);
     const runId = await workshop.submit(subject);
     await workshop.reached(subject.scope, runId, ({ blocksDone }) => blocksDone > 0);
     await workshop.redis.flushdb();
-    await done(runId);
+    await done(subject, runId);
     expect(await storedHash(workshop.db, subject.scope, runId)).toBe(undisturbed);
   });
 });

@@ -35,6 +35,8 @@ describe('the thread pool', () => {
       {
         kind: 'plan',
         secondsPerBlock: 1,
+        part: { kind: 'whole' },
+        stored: null,
         subject: {
           key: String(nodeCount),
           network: networkOf(nodeCount, []),

@@ -104,8 +104,9 @@ describe('a run', () => {
 
   test('has exactly one end, however stopping and finishing race', async () => {
     const ends = new Map<string, number>();
-    const subject = await workshop.bring(constantProbability(12, 0.5, 9));
+    const network = constantProbability(12, 0.5, 9);
     for (let round = 0; round < 30; round++) {
+      const subject = await workshop.bring(network);
       const runId = await workshop.submit(subject);
       await workshop.reached(subject.scope, runId, ({ state, blockCount }) =>
         round % 3 === 0 ? true : round % 3 === 1 ? state !== 'queued' : blockCount !== null,
@@ -144,9 +145,10 @@ describe('a run', () => {
       runId,
     ]);
     const stale = { runId, attempt: 1 };
+    const nothing = { result: new Uint8Array(8), storedBy: 'nobody', seconds: 0 };
     const hash = await storedHash(workshop.db, subject.scope, runId);
     for (let block = 0; block < 3; block++) {
-      expect(await storeBlock(workshop.db, stale, block, new Uint8Array(8), SILENT)).toBe('stale');
+      expect(await storeBlock(workshop.db, stale, { ...nothing, block }, SILENT)).toBe('stale');
     }
     expect(await storedHash(workshop.db, subject.scope, runId)).toBe(hash);
     await stopRun(workshop.db, subject.scope, runId);

@@ -128,13 +128,21 @@ function samples(world: World): Record<RouteName, Sample> {
     createRun: {
       status: 201,
       parameters: () => Promise.resolve({ inBody: world.revisionId }),
-      send: ({ inBody }) => ({ method: 'POST', json: { revisionId: inBody } }),
+      // A part of its own each time: an equal run would be answered with 200.
+      send: ({ inBody }) => ({ method: 'POST', json: { revisionId: inBody, part: anotherPart() } }),
     },
     run: { status: 200, parameters: run },
     stopRun: {
       status: 200,
       parameters: async () => ({ runId: await makeQueuedRun(db, scope, world.revisionId) }),
       send: { method: 'POST' },
+    },
+    // A whole run has nothing left to extend; a done one has nothing left to compute first.
+    extendRun: { status: 409, parameters: run, send: { method: 'POST' } },
+    focusRun: {
+      status: 409,
+      parameters: run,
+      send: { method: 'PUT', json: { kind: 'node', row: 0 } },
     },
     runEvents: { status: 200, parameters: run },
     runBlock: { status: 200, parameters: async () => ({ ...(await run()), block: '0' }) },
@@ -190,6 +198,9 @@ async function clientFor(who: Who, name: RouteName): Promise<Client> {
   if (name !== 'signOut' && name !== 'signIn' && name !== 'signUp') return shared;
   return who === 'visitor' ? app.visitor() : app.clientOf((await makePerson(app.db)).id);
 }
+
+let positions = 1000;
+const anotherPart = () => ({ kind: 'within', positions: (positions += 1) });
 
 describe('who may use which route is what the access table says', () => {
   for (const who of ['visitor', 'outsider', ...ROLES] as const) {

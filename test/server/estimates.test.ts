@@ -3,7 +3,7 @@ import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { redispatchEstimates } from '../../db/repositories/revisionEstimates';
 import { outbox, revisionEstimates } from '../../db/schema/index';
 import { problemSchema } from '../../server/contract/problems';
-import { run, runEstimate } from '../../server/contract/runs';
+import { runEstimate, startedRun } from '../../server/contract/runs';
 import { readEstimate } from '../../server/runs/estimates';
 import { estimate } from '../../jobs/engine/index';
 import type { Network } from '../../jobs/engine/types';
@@ -59,7 +59,7 @@ describe('what a run would need, before it is started', () => {
   test('is the engine’s own count, for every highest dimension', async () => {
     const network = constantProbability(30, 0.4, 21);
     const { ask, start } = await visitorOf(await workshop.bring(network));
-    const { limits } = workshop.config();
+    const { limits, mostSeconds } = workshop.config();
     for (const maxDimension of [0, 1, 2, 3]) {
       const answer = await ask(`?maxDimension=${maxDimension}`);
       const read = runEstimate.parse(await answer.json());
@@ -69,7 +69,9 @@ describe('what a run would need, before it is started', () => {
         ...expected,
         margin: read.margin,
         startUp: read.startUp,
-        allowed: limits,
+        allowed: { ...limits, seconds: mostSeconds },
+        part: { kind: 'whole' },
+        ways: null,
         refusal: null,
       });
       expect(read.cliques).toHaveLength(maxDimension + 2);
@@ -128,19 +130,19 @@ describe('what a run would need, before it is started', () => {
     workshop.startWorker({ HEDDLE_MAX_MEGABYTES: '1' });
     const { ask, start } = await visitorOf(await workshop.bring(completeMultipartite(12, 2)));
     const key = randomUUID();
-    const first = run.parse(await (await start([3], key)).json());
+    const first = startedRun.parse(await (await start([3], key)).json());
     const counted = runEstimate.parse(await (await ask('?maxDimension=3')).json());
     expect(counted.refusal).not.toBeNull();
     const repeated = await start([3], key);
     expect(repeated.status).toBe(201);
-    expect(run.parse(await repeated.json()).id).toBe(first.id);
+    expect(startedRun.parse(await repeated.json()).id).toBe(first.id);
     expect((await start([3])).status).toBe(422);
   });
 
   test('asked for by many at once is counted once; a lost job is asked for again', async () => {
     await workshop.endWorkers();
     const { scope, revisionId } = await workshop.bring(constantProbability(12, 0.4, 5));
-    const question = { revisionId, maxDimension: 2 };
+    const question = { revisionId, maxDimension: 2, part: { kind: 'whole' as const } };
     const read = (until = signal) =>
       readEstimate(workshop.db, workshop.listener, scope, question, until);
     const leaving = new AbortController();

@@ -7,6 +7,7 @@ import {
   pairDetail,
   recordedBarcode,
   run as runSchema,
+  startedRun,
   type Run,
 } from '../../server/contract/runs';
 import { stopRun } from '../../db/repositories/runs';
@@ -55,10 +56,12 @@ describe('the routes of runs', () => {
       },
       body: body && JSON.stringify(body),
     });
-  const start = async (revisionId = subject.revisionId): Promise<Run> => {
-    const answer = await post('', { revisionId });
+  /** A run of its own: an equal one of the same revision would be answered instead. */
+  const start = async (wanted: object = {}): Promise<Run> => {
+    const { revisionId } = await workshop.bring(network, subject.scope);
+    const answer = await post('', { revisionId, ...wanted });
     expect(answer.status).toBe(201);
-    return runSchema.parse(await answer.json());
+    return startedRun.parse(await answer.json());
   };
   const finished = async (runId: string): Promise<Run> =>
     until(
@@ -176,7 +179,7 @@ describe('the routes of runs', () => {
       dimensions: [1],
       scale: 'rank',
     });
-    const { id } = runSchema.parse(await answer.json());
+    const { id } = startedRun.parse(await answer.json());
     await finished(id);
     const line = (await (await get(`/${id}/pairs.csv`)).text()).split('\n')[1]?.split(',') ?? [];
     expect([line[7], line[8], line[11], line[12]]).toEqual(['', '', '', '']);
@@ -191,15 +194,16 @@ describe('the routes of runs', () => {
 
   test('fifty equal submissions at once under one key get one run and fifty equal answers', async () => {
     const key = { 'idempotency-key': randomUUID() };
+    const { revisionId } = await workshop.bring(network, subject.scope);
     const answers = await Promise.all(
-      Array.from({ length: 50 }, () => post('', { revisionId: subject.revisionId }, key)),
+      Array.from({ length: 50 }, () => post('', { revisionId }, key)),
     );
     expect(new Set(answers.map(({ status }) => status))).toEqual(new Set([201]));
     const bodies = await Promise.all(
-      answers.map(async (answer) => runSchema.parse(await answer.json())),
+      answers.map(async (answer) => startedRun.parse(await answer.json())),
     );
     expect(new Set(bodies.map(({ id, number }) => `${id} ${number}`)).size).toBe(1);
-    const other = await post('', { revisionId: subject.revisionId, dimensions: [0] }, key);
+    const other = await post('', { revisionId, dimensions: [0] }, key);
     expect([other.status, await other.json()]).toMatchObject([409, { code: 'runs.key_reused' }]);
   });
 
@@ -237,9 +241,12 @@ describe('the routes of runs', () => {
     const stranger = await server.join(elsewhere.scope.workspaceId, 'owner');
     const own = `${server.origin}/api/workspaces/${elsewhere.scope.workspaceId}`;
     const paths = Object.entries(ROUTES)
-      .filter(([name, { path }]) => path.includes('/runs/:runId') && /^(run|stopRun)/.test(name))
+      .filter(
+        ([name, { path }]) =>
+          path.includes('/runs/:runId') && /^(run|stopRun|extendRun|focusRun)/.test(name),
+      )
       .map(([, { path, method }]) => ({ path, method }));
-    expect(paths.length).toBeGreaterThanOrEqual(8);
+    expect(paths.length).toBeGreaterThanOrEqual(10);
     for (const { path, method } of paths) {
       const below = path.slice(path.indexOf('/runs'));
       const filled = below
@@ -249,7 +256,12 @@ describe('the routes of runs', () => {
         .replace(':b', '1');
       const answer = await fetch(`${own}${filled}`, {
         method,
-        headers: { cookie: stranger.cookie, origin: server.origin },
+        headers: {
+          cookie: stranger.cookie,
+          origin: server.origin,
+          ...(method === 'put' && { 'content-type': 'application/json' }),
+        },
+        ...(method === 'put' && { body: JSON.stringify({ kind: 'node', row: 0 }) }),
       });
       expect([path, answer.status]).toEqual([path, 404]);
     }

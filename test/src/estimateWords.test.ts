@@ -10,15 +10,16 @@ describe('what a run would need', () => {
   });
 
   it('is a time with its range, starting up included, and memory', () => {
-    const allowed = { simplices: 10, bytes: 10 };
+    const allowed = { simplices: 10, bytes: 10, seconds: 10 };
+    const part = { kind: 'whole' as const };
     const counted = { maxDimension: 0, cliques: [3, 2], exact: true, pairs: 3, bytes: 3 * 2 ** 20 };
-    const rest = { ...counted, margin: 4, startUp: 1, allowed, refusal: null };
+    const rest = { ...counted, part, margin: 4, startUp: 1, allowed, ways: null, refusal: null };
     const words = estimateWords({ ...rest, seconds: 0.4 });
     expect(words).toBe(
-      'Cliques: 3 nodes, 2 edges · about 0.4 s of one thread (0.1 s to 2.6 s) · about 3 MiB of memory',
+      '3 pairs · Cliques: 3 nodes, 2 edges · about 0.4 s of one thread (0.1 s to 2.6 s) · about 3 MiB of memory',
     );
     expect(estimateWords({ ...rest, seconds: 0.005 })).toBe(
-      'Cliques: 3 nodes, 2 edges · under 2 s of one thread · about 3 MiB of memory',
+      '3 pairs · Cliques: 3 nodes, 2 edges · under 2 s of one thread · about 3 MiB of memory',
     );
   });
 

@@ -23,6 +23,7 @@ function blockOf(
   return {
     nodeCount: n,
     rows: Uint32Array.from(rows),
+    choice: null,
     pairCount: pairs.length,
     distances: Float64Array.from(cells),
     bettiGaps: Int32Array.from(cells.map(Math.floor)),

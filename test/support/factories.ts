@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { eq } from 'drizzle-orm';
-import type { Role } from '../../server/contract/enums';
+import { WHOLE, type Role } from '../../server/contract/enums';
 import { encodeBarcode } from '../../db/codecs/barcode';
 import { encodeBlockResult } from '../../db/codecs/blockResult';
 import { encodeUint32 } from '../../db/codecs/typedArrays';
@@ -85,9 +85,14 @@ export async function makeDataset(db: Db, scope: Scope, name = 'Path of three') 
   return { id, revisionId: revision.id };
 }
 
+/** Queued runs cover different parts, so that none is answered with another; all have the same three pairs. */
+let parts = 2;
+
 /** A run that waits for a worker; none works in these tests. */
 export async function makeQueuedRun(db: Db, scope: Scope, revisionId: string): Promise<string> {
-  const wanted = { revisionId, scale: 'entry' as const, dimensions: [0], idempotencyKey: null };
+  const part = { kind: 'within' as const, positions: (parts += 1) };
+  const chosen = { scale: 'entry' as const, dimensions: [0], part };
+  const wanted = { revisionId, ...chosen, idempotencyKey: null };
   const made = await createRun(db, scope, wanted);
   if (made.kind !== 'created') throw new Error(made.kind);
   return made.runId;
@@ -103,7 +108,16 @@ export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Pro
   const finishedAt = new Date();
   await db
     .update(runs)
-    .set({ state: 'done', pairsDone: 3, blockCount: 1, blocksDone: 1, barcode, finishedAt })
+    .set({
+      state: 'done',
+      part: WHOLE,
+      pairsTotal: 3,
+      pairsDone: 3,
+      blockCount: 1,
+      blocksDone: 1,
+      barcode,
+      finishedAt,
+    })
     .where(eq(runs.id, runId));
   await db.insert(runBlocks).values({
     workspaceId,
@@ -120,7 +134,7 @@ export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Pro
   await db.insert(pairDetails).values({ workspaceId, runId, p: 0, q: 1, failure });
   await db
     .insert(revisionEstimates)
-    .values({ workspaceId, revisionId, maxDimension: 3, failure })
+    .values({ workspaceId, revisionId, maxDimension: 3, partKey: 'whole', part: WHOLE, failure })
     .onConflictDoNothing();
   return runId;
 }

@@ -59,12 +59,15 @@ function byPosition(
   return new Map([...matrix].sort(([p], [q]) => p - q));
 }
 
-/** SHA-256 of every stored byte of a run: rows and results of its blocks, in the order of blocks. */
+/** SHA-256 of every stored byte of a run: pairs and results of its blocks, in the order of blocks. */
 export async function storedHash(db: Queryable, scope: Scope, runId: string): Promise<string> {
   const hash = createHash('sha256');
-  for (const { block, rows } of await listBlockRows(db, scope, runId)) {
+  for (const { block, rows, partners } of await listBlockRows(db, scope, runId)) {
     const stored = await findBlock(db, scope, runId, block);
-    hash.update(rows).update(stored?.result ?? 'missing');
+    hash
+      .update(rows)
+      .update(partners ?? 'whole')
+      .update(stored?.result ?? 'missing');
   }
   return hash.digest('hex');
 }

@@ -6,7 +6,7 @@ import { dirname } from 'node:path';
 import { Redis } from 'ioredis';
 import pg from 'pg';
 import pino from 'pino';
-import type { Scale } from '../../server/contract/enums';
+import { WHOLE, type RunPart, type Scale } from '../../server/contract/enums';
 import { encodeUint32 } from '../../db/codecs/typedArrays';
 import { openDatabase, type Database } from '../../db/client';
 import { openListener, type Listener } from '../../db/listener';
@@ -151,8 +151,17 @@ export class Workshop {
     return child;
   }
 
-  /** A workspace with one dataset of this network and its analyst. */
-  async bring(network: Network): Promise<Subject> {
+  /**
+   * A dataset of this network in a workspace with an analyst.
+   * @param beside an earlier workspace; a new one without it
+   */
+  async bring(network: Network, beside?: Scope): Promise<Subject> {
+    const scope = beside ?? (await this.#workspace());
+    const revisionId = await this.#revision(scope.workspaceId, network);
+    return { scope, revisionId };
+  }
+
+  async #workspace(): Promise<Scope> {
     const [user] = await this.db
       .insert(users)
       .values({
@@ -166,6 +175,10 @@ export class Workshop {
     if (!user || !workspace) throw new Error('Nothing was inserted.');
     const workspaceId = workspace.id;
     await this.db.insert(memberships).values({ workspaceId, userId: user.id, role: 'analyst' });
+    return { workspaceId, userId: user.id };
+  }
+
+  async #revision(workspaceId: string, network: Network): Promise<string> {
     const [dataset] = await this.db
       .insert(datasets)
       .values({ workspaceId, name: 'Invented network', invented: true })
@@ -197,19 +210,21 @@ export class Workshop {
           entry,
         })),
       );
-    return { scope: { workspaceId, userId: user.id }, revisionId };
+    return revisionId;
   }
 
   async submit(
     { scope, revisionId }: Subject,
-    wanted: { scale?: Scale; dimensions?: number[]; key?: string } = {},
+    wanted: { scale?: Scale; dimensions?: number[]; part?: RunPart; key?: string } = {},
   ): Promise<string> {
     const made = await createRun(this.db, scope, {
       revisionId,
       scale: wanted.scale ?? 'entry',
       dimensions: wanted.dimensions ?? [1, 2, 3],
+      part: wanted.part ?? WHOLE,
       idempotencyKey: wanted.key ?? null,
     });
+    // A run that equals an earlier one is no run of its own: a test that wants one brings the network again.
     if (made.kind !== 'created' && made.kind !== 'repeated') throw new Error(made.kind);
     return made.runId;
   }

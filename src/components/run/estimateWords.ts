@@ -39,6 +39,7 @@ function timeWords({ seconds, margin, startUp }: RunEstimate): string {
 /** What a run would need, in one line. */
 export function estimateWords(estimate: RunEstimate): string {
   return [
+    formatNoun(estimate.pairs, 'pair'),
     `Cliques: ${cliqueWords(estimate.cliques)}`,
     timeWords(estimate),
     `about ${formatBytes(estimate.bytes)} of memory`,
