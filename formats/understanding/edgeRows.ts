@@ -1,5 +1,5 @@
 import { quoted, type IssueList } from '../issues';
-import { isMissing } from '../sources/cellKinds';
+import { isMissing, plainNumber } from '../sources/cellKinds';
 import type { FormatLimits } from '../types';
 import type { ImportChoices } from './choices';
 import { EdgeFold, type FoldedEdges } from './edgeFold';
@@ -18,7 +18,7 @@ export interface EdgeIndices {
 export interface ReadEdges extends FoldedEdges {
   readonly edgeRows: number;
   readonly selfLoops: number;
-  /** Rows whose weight is missing; 0 without a weight column. */
+  /** Rows whose weight is missing or no number; 0 without a weight column. */
   readonly rowsWithoutWeight: number;
 }
 
@@ -47,7 +47,7 @@ export function readEdgeRows(
     const b = endRow('target', cells[at.target] ?? '', place, list, issues);
     const cell = cells[at.weight] ?? '';
     const weight = at.weight < 0 ? NaN : weightOf(cell, place, choices, issues);
-    if (at.weight >= 0 && isMissing(cell)) rowsWithoutWeight++;
+    if (at.weight >= 0 && Number.isNaN(weight)) rowsWithoutWeight++;
     if (a === undefined || b === undefined) continue;
     if (a === b) selfLoops++;
     else fold.add(a, b, weight);
@@ -74,9 +74,9 @@ function weightOf(
   { decimal }: Pick<ImportChoices, 'decimal'>,
   issues: IssueList,
 ): number {
+  const plain = decimal === '.' ? plainNumber(cell) : NaN;
+  if (!Number.isNaN(plain)) return plain;
   if (isMissing(cell)) return NaN;
-  const quick = decimal === '.' && /^\d{1,15}(?:\.\d{1,12})?$/.test(cell);
-  if (quick) return Number(cell);
   const read = readTime(cell, { decimal, dayOrder: null, years: 'numbers' });
   if (read.unit === 'number') return read.value;
   issues.add({

@@ -1,5 +1,6 @@
 import { type IssueList } from '../issues';
 import { isMissing } from '../sources/cellKinds';
+import { ownText } from '../sources/ownText';
 import type { ImportChoices } from './choices';
 import type { EdgeIndices } from './edgeRows';
 import { NO_TIMES, type NodeTimes, type TimedNodes } from './draft';
@@ -23,19 +24,16 @@ export function timesByFirstEdge(
   let edgesWithoutTime = 0;
   for (const { line, cells } of table.rows()) {
     const raw = cells[at.time] ?? '';
-    if (isMissing(raw)) {
-      edgesWithoutTime++;
+    const time = scale.scaled(raw, { line, field }, issues);
+    if (!time) {
+      if (isMissing(raw)) edgesWithoutTime++;
       continue;
     }
-    const time = scale.scaled(raw, { line, field }, issues);
-    if (!time) continue;
     for (const end of [at.source, at.target]) {
       const row = list.row(cells[end] ?? '');
       if (row === undefined) continue;
       const known = best[row];
-      // A copy of the text: what is cut from a block of the file would keep the whole block.
-      if (!known || time.value < known.time.value)
-        best[row] = { time, raw: Buffer.from(raw, 'utf8').toString('utf8') };
+      if (!known || time.value < known.time.value) best[row] = { time, raw: ownText(raw) };
     }
   }
   const counts = { given: 0, years: 0, months: 0 };

@@ -1,4 +1,5 @@
 import { quoted, type IssueList } from '../issues';
+import { ownText } from '../sources/ownText';
 import type { FormatLimits } from '../types';
 import type { DraftNode, RawTimes } from './draft';
 import type { PickedTable } from './tables';
@@ -40,8 +41,7 @@ export class NodeList {
   /** Adds a node that something else names. @returns its row, or undefined past the limit */
   addNamed(id: string, place: { file: string; line: number }): number | undefined {
     if (this.full()) return undefined;
-    // A copy: what is cut from a block of the file would keep the whole block.
-    const own = Buffer.from(id, 'utf8').toString('utf8');
+    const own = ownText(id);
     const node = { ...place, id: own, label: own, listed: false, raw: NO_RAW };
     this.checkNames(node);
     this.rowOf.set(own.normalize('NFC'), this.nodes.length);

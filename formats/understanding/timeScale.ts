@@ -1,12 +1,17 @@
 import { UNIT_WORDS } from '../entries';
 import { quoted, type IssueList } from '../issues';
-import { isDateLike, isMissing, isNumber } from '../sources/cellKinds';
+import { isDateLike, isMissing, isNumber, plainNumber } from '../sources/cellKinds';
+import { ownText } from '../sources/ownText';
 import type { EntryUnit } from '../types';
 import type { ImportChoices } from './choices';
-import { dayEvidence, readTime, type ReadTime, type TimeReading } from './times';
+import { dayEvidence, readTime, type ReadTime, type TimeCell, type TimeReading } from './times';
 
 const DAY_SECONDS = 86_400;
 const SHOWN = 5;
+/** Texts that are remembered with what they say. */
+const REMEMBERED = 4_096;
+/** Numbers below are neither seconds nor milliseconds since 1970. */
+const LARGE = 5e8;
 
 /** Where a cell stands, for messages. */
 export interface Place {
@@ -26,6 +31,15 @@ interface Seen extends Place {
   readonly text: string;
 }
 
+/** What a text says; all null where it is missing. */
+interface Noted {
+  readonly evidence: ReturnType<typeof dayEvidence>;
+  readonly yearLike: boolean;
+  readonly time: TimeCell | null;
+}
+
+const MISSING: Noted = { evidence: null, yearLike: false, time: null };
+
 /**
  * Finds out how the times of a network are written: every cell is `see`n once, then `settle` decides
  * for one unit, one order of day and month and what four digits are, and reports the cells that do
@@ -41,43 +55,61 @@ export class TimeScale {
   };
   private zoned: Seen | null = null;
   private unzoned: Seen | null = null;
+  private readonly known = new Map<string, Noted>();
   private reading: TimeReading;
+  /** Tells what a cell is before the order of day and month is settled. */
+  private readonly tentative: TimeReading;
   unit: EntryUnit = 'number';
 
   constructor(
     private readonly file: string,
     choices: Pick<ImportChoices, 'decimal' | 'dayOrder' | 'years'>,
   ) {
-    this.reading = choices;
+    const { decimal, dayOrder, years } = choices;
+    this.reading = { decimal, dayOrder, years };
+    this.tentative = { decimal, dayOrder: dayOrder ?? 'day_first', years };
+  }
+
+  /** What a text says, remembered: times of edges come again and again. */
+  private noted(text: string, reading: TimeReading): Noted {
+    const known = this.known.get(text);
+    if (known) return known;
+    if (this.known.size === REMEMBERED) this.known.clear();
+    const noted = isMissing(text)
+      ? null
+      : { evidence: dayEvidence(text), yearLike: isYearLike(text), time: readTime(text, reading) };
+    this.known.set(ownText(text), noted ?? MISSING);
+    return noted ?? MISSING;
   }
 
   /** Takes account of a cell; missing ones count for nothing. */
   see(text: string, place: Place): void {
-    if (isMissing(text)) return;
-    const evidence = dayEvidence(text);
+    const plain = this.reading.decimal === '.' && text.length !== 4 ? plainNumber(text) : NaN;
+    if (plain < LARGE) {
+      this.counts.number++;
+      return;
+    }
+    const { evidence, yearLike, time } = this.noted(text, this.tentative);
+    if (time === null) return;
     if (evidence !== null) {
       this.evidence[evidence]++;
       if (evidence === 'either' && this.examples.length < SHOWN) this.examples.push(text);
     }
-    if (isYearLike(text)) {
+    if (yearLike) {
       this.counts.yearLike++;
       return;
     }
-    const time = readTime(text, {
-      ...this.reading,
-      dayOrder: this.reading.dayOrder ?? 'day_first',
-    });
     if (time.unit === null) {
       if (isDateLike(text)) this.counts.days++;
       return;
     }
     this.counts[time.unit]++;
-    const seen = { ...place, text };
-    if (time.unit === 'seconds') {
-      if (time.zoned) this.zoned ??= seen;
-      else this.unzoned ??= seen;
+    if (time.unit === 'seconds' && (time.zoned ? this.zoned : this.unzoned) === null) {
+      const seen = { ...place, text };
+      if (time.zoned) this.zoned = seen;
+      else this.unzoned = seen;
     }
-    if (time.unit === 'number') this.seeMagnitude(time.value, seen);
+    if (time.unit === 'number') this.seeMagnitude(time.value, { ...place, text });
   }
 
   private seeMagnitude(value: number, seen: Seen): void {
@@ -91,6 +123,7 @@ export class TimeScale {
    * @returns cells of which only the order of day and month is unknown; empty if all can be read
    */
   settle(issues: IssueList): readonly string[] {
+    this.known.clear();
     const { number, yearLike, days, seconds } = this.counts;
     const dates = days + seconds;
     const yearsAreDates =
@@ -147,8 +180,11 @@ export class TimeScale {
 
   /** Reads a cell after `settle`; null where it is missing or wrong, and then it says so if wrong. */
   scaled(text: string, place: Place, issues: IssueList): ScaledTime | null {
-    if (isMissing(text)) return null;
-    const time = readTime(text, this.reading);
+    const quick = this.unit === 'number' && this.reading.decimal === '.' && text.length !== 4;
+    const plain = quick ? plainNumber(text) : NaN;
+    if (!Number.isNaN(plain)) return { value: plain, first: null, last: null, of: null };
+    const { time } = this.noted(text, this.reading);
+    if (time === null) return null;
     if (time.unit === null) {
       // An unknown order is asked once, not reported in every row.
       if (!time.ambiguous) issues.add({ file: this.file, ...place, message: time.message });
