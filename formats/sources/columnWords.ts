@@ -7,15 +7,16 @@ const words = (text: string): readonly string[] => text.trim().split(/\s+/);
 /** Names in use for the columns of node tables, the likeliest first. */
 export const NODE_WORDS: Readonly<Record<NodeColumn, readonly string[]>> = {
   id: words(`id node node_id nodeid key code identifier vertex station station_id species species_id
-    taxon site site_id region region_id module file path unit actor person item name`),
+    taxon site site_id region region_id module file path unit actor person item kennung clave name`),
   label: words(`label name title full_name display_name long_name node_label species_name
-    station_name common_name description`),
-  entry: words(`entry entry_time entry_date entered arrival arrival_time arrival_date arrived
+    station_name common_name bezeichnung nom nombre description`),
+  entry:
+    words(`entry eintritt ankunft erstfund arrivée llegada entry_time entry_date entered arrival arrival_time arrival_date arrived
     first_seen firstseen first_detection first_detected first_record first_recorded
     first_observed first_appearance first_date first_day first_year appeared appearance joined
     join_date join_time commissioned commissioning commissioning_date introduced
     introduced_on onset onset_time start start_time start_date added added_on created created_at
-    detected since birth birth_time date datetime time timestamp day year month t rank order step
+    detected since birth birth_time date datetime time timestamp day year month datum fecha jahr année t rank order step
     position`),
   earliest: words(`earliest earliest_entry entry_earliest earliest_date entry_min min_entry min
     lower lower_bound not_before from_date date_from first_possible lo window_start`),
@@ -25,17 +26,20 @@ export const NODE_WORDS: Readonly<Record<NodeColumn, readonly string[]>> = {
 
 /** Names in use for the columns of edge tables, the likeliest first. */
 export const EDGE_WORDS: Readonly<Record<EdgeColumn, readonly string[]>> = {
-  source: words(`source source_id source_node src from from_id from_node fromnodeid from_node_id
+  source:
+    words(`source quelle origen von source_id source_node src from from_id from_node fromnodeid from_node_id
     node1 node_1 node_a nodea id1 id_1 id_a start_node sender origin tail parent caller consumer
     predator pollinator species_1 station_1 station_a region_1 region_a a i u`),
-  target: words(`target target_id target_node dst dest destination to to_id to_node tonodeid
+  target:
+    words(`target ziel cible destino nach target_id target_node dst dest destination to to_id to_node tonodeid
     to_node_id node2 node_2 node_b nodeb id2 id_2 id_b end_node receiver head child callee resource
     prey plant species_2 station_2 station_b region_2 region_b b j v`),
-  weight: words(`weight w value strength count counts n freq frequency correlation corr r score
+  weight:
+    words(`weight gewicht poids peso w value strength count counts n freq frequency correlation corr r score
     similarity amount volume flow rate weight_mean contacts interactions`),
   time: words(`time timestamp date datetime t start start_time start_date first_seen firstseen
     first_contact first_date first_observed observed observed_on entry since when year month day
-    created created_at onset`),
+    created created_at datum fecha onset`),
 };
 
 /** A column name as the words above are compared: NFC, lower case, one _ for what is no letter or digit. */

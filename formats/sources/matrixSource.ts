@@ -7,20 +7,22 @@ import type { RawRow, RawSource, SourceBytes, SourceLimits } from './types';
 /** Rows that decide whether a table is a matrix. */
 const LOOKED_AT = 20;
 
-/** Whether the first cells of the rows are among the labels of the header, and the rest are numbers. */
+/** Whether the first cells of the rows are among the labels of the header, and most of the rest are numbers. */
 export function isMatrix(bytes: Uint8Array, layout: TableLayout): boolean {
   const labels = columnLabels(layout);
   if (labels.length < 2 || layout.header?.slice(1).includes('') !== false) return false;
   const known = new Set(labels);
   if (known.size < labels.length) return false;
   let rows = 0;
+  let wrong = 0;
   for (const { row } of bodyOf(bytes, layout)) {
     if (!row) continue;
     const [first = '', ...cells] = row.cells;
-    if (!known.has(key(first)) || !cells.every((cell) => isWeight(cell, layout))) return false;
+    if (!known.has(key(first))) return false;
+    wrong += cells.filter((cell) => !isWeight(cell, layout)).length;
     if (++rows === LOOKED_AT) break;
   }
-  return rows > 0;
+  return rows > 0 && wrong <= (rows * labels.length) / 4;
 }
 
 const key = (label: string): string => label.normalize('NFC');

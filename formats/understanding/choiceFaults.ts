@@ -9,7 +9,8 @@ export function checkChoices(
   issues: IssueList,
 ): void {
   const add = (file: string, message: string) => issues.add({ file, message });
-  if (!nodes && !edges) add('', 'There is no file with nodes or edges to understand.');
+  if (!nodes && !edges && !issues.any)
+    add('', 'There is no file with nodes or edges to understand.');
   if (nodes && columns.nodes.id === null)
     add(
       nodes.file,
