@@ -87,3 +87,16 @@ export function decodeUint32(stored: Uint8Array): Uint32Array {
   }
   return array;
 }
+
+/** @returns the bytes of one f64 array, as in revisions.weights. */
+export const encodeFloat64 = (array: Float64Array): Uint8Array<ArrayBuffer> =>
+  encodeArrays([array]);
+
+/** @throws RangeError if the bytes do not hold exactly one f64 array. */
+export function decodeFloat64(stored: Uint8Array): Float64Array {
+  const [array, ...others] = decodeArrays(stored);
+  if (!(array instanceof Float64Array) || others.length > 0) {
+    throw new RangeError('Stored arrays: one f64 array was expected.');
+  }
+  return array;
+}

@@ -1,12 +1,13 @@
 import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm';
 import type { EntryUnit } from '#contract/enums';
 import type { Queryable } from '../client';
-import { encodeUint32 } from '../codecs/typedArrays';
+import { encodeFloat64, encodeUint32 } from '../codecs/typedArrays';
 import { datasets } from '../schema/datasets';
 import { revisionNodes } from '../schema/revisionNodes';
 import { revisions } from '../schema/revisions';
 import { users } from '../schema/users';
 import type { Scope } from './scope';
+import { removeStaged, staged, type EncodedPieces } from './stagedPieces';
 
 export interface NewNode {
   readonly id: string;
@@ -26,7 +27,9 @@ export interface NewRevision {
   readonly entryUnit: EntryUnit;
   readonly nodes: readonly NewNode[];
   /** u32[2 m]: node rows of the ends of each edge, lower row first, edges ascending. */
-  readonly edges: Uint32Array;
+  readonly edges: Uint32Array | EncodedPieces;
+  /** f64[m]: the weight of each edge, NaN for none; null or absent where the network has none. */
+  readonly weights?: Float64Array | EncodedPieces | null;
   /** Contract: importReport. */
   readonly report: object;
 }
@@ -50,7 +53,8 @@ export async function insertRevision(
   scope: Scope,
   revision: NewRevision,
 ): Promise<string> {
-  const { nodes, edges, ...columns } = revision;
+  const { nodes, edges, weights, ...columns } = revision;
+  const edgeBytes = edges instanceof Uint32Array ? encodeUint32(edges) : await staged(db, edges);
   const rows = await db
     .insert(revisions)
     .values({
@@ -59,14 +63,21 @@ export async function insertRevision(
       createdBy: scope.userId,
       nodeCount: nodes.length,
       edgeCount: edges.length / 2,
-      edges: encodeUint32(edges),
+      edges: edgeBytes,
+      weights: weights && (await weightBytes(db, weights)),
     })
     .returning({ id: revisions.id });
   const id = rows[0]?.id;
   if (id === undefined) throw new Error('The new revision was not returned.');
+  for (const array of [edges, weights]) {
+    if (array && 'stage' in array) await removeStaged(db, array);
+  }
   await insertNodes(db, scope, id, nodes);
   return id;
 }
+
+const weightBytes = (db: Queryable, weights: Float64Array | EncodedPieces) =>
+  weights instanceof Float64Array ? encodeFloat64(weights) : staged(db, weights);
 
 /** One statement whatever the number of nodes: each column travels as one array. */
 async function insertNodes(

@@ -20,6 +20,8 @@ export const revisions = pgTable(
     entryUnit: entryUnitEnum('entry_unit').notNull(),
     /** Typed array u32[2 m]: node rows of the ends of each edge, lower row first, edges ascending. */
     edges: bytea('edges').notNull(),
+    /** Typed array f64[m]: the weight of each edge, NaN for none; null where the network has none. */
+    weights: bytea('weights'),
     /** Counts of what reading folded or passed over (contract: importReport). */
     report: jsonb('report').notNull(),
     createdBy: uuid('created_by').references(() => users.id, { onDelete: 'set null' }),

@@ -20,6 +20,11 @@ export const ENTRY_UNITS = ['number', 'days', 'seconds'] as const;
 export const entryUnitSchema = z.enum(ENTRY_UNITS);
 export type EntryUnit = z.infer<typeof entryUnitSchema>;
 
+/** A draft is open until it is saved as a revision. */
+export const IMPORT_STATES = ['open', 'saved'] as const;
+export const importStateSchema = z.enum(IMPORT_STATES);
+export type ImportState = z.infer<typeof importStateSchema>;
+
 /** How a group came about. */
 export const GROUP_ORIGINS = ['community', 'hand'] as const;
 export const groupOriginSchema = z.enum(GROUP_ORIGINS);

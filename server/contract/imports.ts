@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { createDatasetFields, UPLOAD_LIMITS } from './datasets';
-import { entryUnitSchema } from './enums';
+import { entryUnitSchema, importStateSchema } from './enums';
 import {
   dropped,
   importChoices,
@@ -129,7 +129,7 @@ const draftHead = {
   id: z.uuid(),
   name: z.string(),
   /** `saved` for good, with `saved` set; drafts that are left are removed at `expiresAt`. */
-  state: z.enum(['open', 'saved']),
+  state: importStateSchema,
   /** Where it is to become a revision. */
   datasetId: z.uuid().nullable(),
   datasetName: z.string().nullable(),
