@@ -5,12 +5,12 @@ import { claimRun, failRun, finishIfComplete, storeBlock } from '../../db/reposi
 import { ENGINE_VERSION } from '../engine/index';
 import type { PairResults } from '../engine/types';
 import type { Pool } from '../pool/pool';
-import type { Outcome, Subject } from '../pool/tasks';
+import type { Outcome, Subject, TimeLimit } from '../pool/tasks';
 import type { Payload } from '../queue/jobs';
 import type { Context } from './context';
 import { settle } from './outcome';
 import { subjectOf } from './subject';
-import { overTime, runSignal } from './timeLimit';
+import { timeLeft } from './timeLimit';
 
 /** Computes one block of pairs and stores it, unless somebody has. */
 export async function block(payload: Payload<'block'>, context: Context): Promise<void> {
@@ -29,9 +29,8 @@ export async function block(payload: Payload<'block'>, context: Context): Promis
   const subject = await subjectOf(run, context);
   if (!subject) return;
   await activity.during(fence, async (signal) => {
-    const limited = runSignal(run, config, signal);
-    const outcome = await compute(pool, subject, decodeBlockPairs(stored), limited.signal);
-    if (limited.isOver()) return void (await failRun(db, fence, overTime(config), mailRule));
+    const shared = { subject, timeLimit: timeLeft(run, config) };
+    const outcome = await compute(pool, shared, decodeBlockPairs(stored), signal);
     if (outcome.kind !== 'finished') return settle(outcome, fence, context);
     const { result, seconds = 0 } = outcome;
     const computed = { block: payload.block, result: encodeBlockResult(result), seconds };
@@ -42,13 +41,13 @@ export async function block(payload: Payload<'block'>, context: Context): Promis
 /** Whole rows go to the thread as rows; a list of all their pairs would say nothing more. */
 const compute = (
   pool: Pool,
-  subject: Subject,
+  shared: { readonly subject: Subject; readonly timeLimit: TimeLimit },
   { rows, choice }: BlockPairs,
   signal: AbortSignal,
 ): Promise<Outcome<PairResults>> =>
   choice === null
-    ? pool.run<'rows'>({ kind: 'rows', subject, rows }, signal)
-    : pool.run<'pairs'>({ kind: 'pairs', subject, choice: { rows, ...choice } }, signal);
+    ? pool.run<'rows'>({ kind: 'rows', ...shared, rows }, signal)
+    : pool.run<'pairs'>({ kind: 'pairs', ...shared, choice: { rows, ...choice } }, signal);
 
 /** When every block has ended: the last one has ended the run too, so this finds nothing to do. */
 export async function finish(

@@ -1,5 +1,6 @@
 import type { RunFailure, WorkRun } from '../../db/repositories/runWork';
 import type { WorkerConfig } from '../config';
+import type { TimeLimit } from '../pool/tasks';
 
 const digits = new Intl.NumberFormat('en-GB', { maximumSignificantDigits: 3 });
 
@@ -11,31 +12,19 @@ const WAYS =
   'Choose fewer dimensions or a part of the pairs (those within some positions, or whose intervals overlap), or bring in a revision with a higher weight threshold.';
 
 /** A run that was planned although nobody had asked for its estimate. */
-export const tooLong = (seconds: number, { mostSeconds }: WorkerConfig): RunFailure => ({
+export const tooLong = (seconds: number, mostSeconds: number): RunFailure => ({
   code: 'engine.limit_seconds',
   message: `The run would take about ${spanOf(seconds)} of one thread; ${spanOf(mostSeconds)} are allowed. ${WAYS}`,
 });
 
-/** A run whose estimate was too low. */
-export const overTime = ({ mostSeconds }: WorkerConfig): RunFailure => ({
-  code: 'engine.limit_seconds',
-  message: `The run took more than the ${spanOf(mostSeconds)} of one thread that are allowed, and was ended. ${WAYS}`,
-});
-
 /**
- * Aborts as `signal` does, and once the run has taken the time that is left to it. Stored blocks
- * count by what threads spent on them, the block at work by the clock.
+ * What is left to a run whose estimate was too low: stored blocks count by what threads spent on
+ * them, the block at work from when its thread began it. Tables are bounded by their cliques.
  */
-export function runSignal(
+export const timeLeft = (
   { secondsSpent }: Pick<WorkRun, 'secondsSpent'>,
   { mostSeconds }: WorkerConfig,
-  signal: AbortSignal,
-): { readonly signal: AbortSignal; readonly isOver: () => boolean } {
-  const milliseconds = Math.ceil(1000 * Math.max(0, mostSeconds - secondsSpent));
-  // The longest time that a timer of the platform takes.
-  const limit = AbortSignal.timeout(Math.min(milliseconds, 2 ** 31 - 1));
-  return {
-    signal: AbortSignal.any([signal, limit]),
-    isOver: () => limit.aborted && !signal.aborted,
-  };
-}
+): TimeLimit => ({
+  seconds: Math.max(0, mostSeconds - secondsSpent),
+  refusal: `The run took more than the ${spanOf(mostSeconds)} of one thread that are allowed, and was ended. ${WAYS}`,
+});

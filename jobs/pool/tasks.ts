@@ -42,8 +42,15 @@ export interface PairResult {
   readonly similarity: number;
 }
 
+/** A task that takes longer than this many seconds on its thread is refused with the sentence. */
+export interface TimeLimit {
+  readonly seconds: number;
+  readonly refusal: string;
+}
+
 export type Task = {
   readonly subject: Subject;
+  readonly timeLimit?: TimeLimit;
   /** Shared: [0] is 1 once the task must stop, [1] counts finished pairs. */
   readonly control: Int32Array;
   /** The prepared tables, in memory that all threads of the process share; null where not needed. */
@@ -61,8 +68,8 @@ export type Task = {
       readonly kind: 'estimate';
       readonly budget: Budget;
       readonly part: Part;
-      /** The pairs of overlapping intervals, as a way out. */
-      readonly overlapping: Part;
+      /** The pairs of overlapping intervals, as a way out; null: no way out is asked for. */
+      readonly overlapping: Part | null;
     }
   | { readonly kind: 'rows'; readonly rows: Uint32Array }
   | { readonly kind: 'pairs'; readonly choice: PairChoice }

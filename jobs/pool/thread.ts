@@ -23,9 +23,14 @@ import type { EstimateResult, Outcome, PairResult, PlanResult, ResultOf, Task } 
 const kept = new Map<string, Prepared>();
 const MOST_KEPT = 2;
 
-function controlOf(control: Int32Array): Control {
+/** Whether a task that began then has had its time. */
+const isLate = ({ timeLimit }: Task, from: number): boolean =>
+  timeLimit !== undefined && performance.now() - from > 1000 * timeLimit.seconds;
+
+function controlOf(task: Task, from: number): Control {
+  const { control } = task;
   return {
-    shouldStop: () => Atomics.load(control, 0) === 1,
+    shouldStop: () => Atomics.load(control, 0) === 1 || isLate(task, from),
     onProgress: (pairsDone) => void Atomics.store(control, 1, pairsDone),
   };
 }
@@ -67,7 +72,7 @@ function estimated(task: Task & { kind: 'estimate' }): EstimateResult {
   const { network, maxDimension, limits } = task.subject;
   const { part, overlapping, budget } = task;
   const needed = estimate(network, maxDimension, limits, part);
-  const ways = waysOut({ network, maxDimension, part, overlapping }, needed, budget);
+  const ways = overlapping && waysOut({ network, maxDimension, part, overlapping }, needed, budget);
   return { estimate: needed, ways };
 }
 
@@ -76,8 +81,7 @@ function pair(task: Task & { kind: 'pair' }): PairResult {
   return { detail, similarity: similarity(detail.distances, detail.bound, task.dimensions) };
 }
 
-function run(task: Task): ResultOf<Task['kind']> {
-  const control = controlOf(task.control);
+function run(task: Task, control: Control): ResultOf<Task['kind']> {
   switch (task.kind) {
     case 'prepare':
       return prepareShared(task, control);
@@ -98,10 +102,14 @@ function run(task: Task): ResultOf<Task['kind']> {
 export default function work(task: Task): Outcome<ResultOf<Task['kind']>> {
   const from = performance.now();
   try {
-    const result = run(task);
+    const result = run(task, controlOf(task, from));
     return { kind: 'finished', result, seconds: (performance.now() - from) / 1000 };
   } catch (error) {
-    if (error instanceof EngineStopped) return { kind: 'stopped' };
+    if (error instanceof EngineStopped) {
+      return task.timeLimit && isLate(task, from)
+        ? { kind: 'refused', code: 'engine.limit_seconds', message: task.timeLimit.refusal }
+        : { kind: 'stopped' };
+    }
     if (error instanceof EngineLimitError) {
       return { kind: 'refused', code: `engine.limit_${error.limit}`, message: error.message };
     }
