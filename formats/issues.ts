@@ -1,6 +1,6 @@
 import type { FileIssue } from './types';
 
-/** Issues that are listed; those past it are only counted. */
+/** Issues that are listed unless told otherwise; those past it are only counted. */
 const LISTED = 200;
 
 /** Everything that is wrong with the files of one network. */
@@ -8,8 +8,10 @@ export class IssueList {
   readonly listed: FileIssue[] = [];
   leftOut = 0;
 
+  constructor(private readonly most = LISTED) {}
+
   add(issue: FileIssue): void {
-    if (this.listed.length < LISTED) this.listed.push(issue);
+    if (this.listed.length < this.most) this.listed.push(issue);
     else this.leftOut++;
   }
 

@@ -61,6 +61,8 @@ export interface FormatLimits {
   readonly edgeRows: number;
   readonly lineCharacters: number;
   readonly labelCharacters: number;
+  /** Issues that are listed, those past it being counted; 200 unless told otherwise. */
+  readonly issues?: number;
 }
 
 /** A file as it arrives: its name for the messages, and its bytes. */

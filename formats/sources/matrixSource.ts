@@ -46,7 +46,7 @@ export function matrixSource(
   layout: TableLayout,
   limits: SourceLimits,
 ): RawSource {
-  const issues = new IssueList();
+  const issues = new IssueList(limits.issues);
   const labels = columnLabels(layout);
   checkLabels(file.name, layout, limits, issues);
   const halves = issues.any ? null : readHalves(file, layout, issues);

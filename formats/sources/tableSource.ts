@@ -37,7 +37,7 @@ export function tableSource(
       ],
     };
   }
-  const issues = new IssueList();
+  const issues = new IssueList(limits.issues);
   const table = readBody(file, layout, limits, issues);
   const role = hint.role ?? guessRole(file.name, table);
   return {
@@ -71,18 +71,18 @@ export function emptySource(file: string, reading: TextReading): RawSource {
 function withoutRecords(
   file: SourceBytes,
   reading: TextReading,
-  { lineCharacters }: SourceLimits,
+  limits: SourceLimits,
   blank: RawSource,
 ): RawSource {
   const none = {
     reading,
-    lineCharacters,
+    lineCharacters: limits.lineCharacters,
     columns: [],
     header: null,
     firstLine: 1,
     leadingLines: 0,
   };
-  const issues = new IssueList();
+  const issues = new IssueList(limits.issues);
   for (const { fault } of bodyOf(file.bytes, none)) {
     if (fault) issues.add({ file: file.name, ...fault });
   }

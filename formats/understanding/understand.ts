@@ -49,7 +49,7 @@ export function understand(
   choices: ImportChoices,
   limits: FormatLimits,
 ): Understanding {
-  const issues = new IssueList();
+  const issues = new IssueList(limits.issues);
   for (const source of sources) {
     for (const issue of source.issues) issues.add(issue);
     issues.leftOut += source.leftOut;
