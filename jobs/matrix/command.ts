@@ -8,18 +8,23 @@ import {
   BARCODES_HEADER,
   pairsTable,
   PAIRS_HEADER,
+  type ArrivingNode,
   type MatrixRow,
 } from '../../formats/matrixTable';
 import { readNetwork } from '../../formats/nodesAndEdges';
 import type { FileIssue, FormatLimits, ReadNetwork } from '../../formats/types';
 import {
   arrivalOrder,
-  computeRows,
+  computePairs,
+  countPairs,
+  partnersOf,
   prepare,
   recordedBarcode,
+  type Partners,
   type Prepared,
 } from '../engine/index';
-import type { Control } from '../engine/types';
+import type { Control, PairChoice } from '../engine/types';
+import { enginePart } from '../parts';
 import { valuesOn } from '../scales';
 import { similarityDimensions, type MatrixOptions } from './options';
 
@@ -83,14 +88,17 @@ export async function computeMatrix(
     await writeCsv(options.barcodes, BARCODES_HEADER, barcodesTable(recordedBarcode(prepared)));
   }
   if (options.pairs === null && options.barcodes !== null) return;
-  const nodes = Array.from(arrivalOrder(entries), (row) => network.nodes[row]).flatMap((node) =>
-    node ? [{ nodeId: node.id, entryRaw: node.entryRaw, entry: node.entry }] : [],
-  );
-  const table = pairsTable({
-    nodes,
-    scale: options.scale,
+  const partners = partnersOf(enginePart(options.part, network.nodes), nodeCount);
+  const arriving = Array.from(arrivalOrder(entries)).flatMap((row) => network.nodes[row] ?? []);
+  const table = partTable({
+    // The values are on the scale already; the table measures them as they are.
+    nodes: arriving.map(({ id, entryRaw }, p) => ({
+      nodeId: id,
+      entryRaw,
+      entry: prepared.values[p] ?? NaN,
+    })),
     dimensions: similarityDimensions(options.maxDimension),
-    rows: matrixRows(prepared, nodeCount, onProgress),
+    rows: matrixRows(prepared, partners, onProgress),
   });
   if (options.pairs !== null) await writeCsv(options.pairs, PAIRS_HEADER, table);
   else await pipeline(Readable.from(csvLines(PAIRS_HEADER, table)), output, { end: false });
@@ -148,41 +156,79 @@ async function* bytesOf(path: string): AsyncGenerator<Uint8Array> {
 
 const silent: Control = { shouldStop: () => false, onProgress: () => undefined };
 
-/** All rows in the order of p, computed a batch at a time so that memory stays bounded. */
+interface PartRow extends MatrixRow {
+  /** Positions q > p of its pairs, ascending; the results are in their order. */
+  readonly partners: Uint32Array;
+}
+
+interface PartTable {
+  /** In arrival order, `entry` on the scale. */
+  readonly nodes: readonly ArrivingNode[];
+  readonly dimensions: readonly number[];
+  readonly rows: Iterable<PartRow>;
+}
+
+/** The rows of pairs.csv, one for each pair of the part. */
+async function* partTable({ nodes, dimensions, rows }: PartTable): AsyncGenerator<Cell[]> {
+  for (const { p, partners, ...results } of rows) {
+    const chosen = [p, ...partners].flatMap((position) => nodes[position] ?? []);
+    const row = { p: 0, ...results };
+    yield* pairsTable({ nodes: chosen, scale: 'entry', dimensions, rows: [row] });
+  }
+}
+
+/** The rows with a pair in the order of p, computed a batch at a time so that memory stays bounded. */
 function* matrixRows(
   prepared: Prepared,
-  nodeCount: number,
+  partners: Partners,
   onProgress: Surroundings['onProgress'],
-): Generator<MatrixRow> {
-  const total = (nodeCount * (nodeCount - 1)) / 2;
+): Generator<PartRow> {
+  const total = countPairs(partners);
   let done = 0;
-  for (const rows of batches(nodeCount)) {
+  for (const choice of batches(partners)) {
     const before = done;
     const control = { ...silent, onProgress: (pairs: number) => onProgress(before + pairs, total) };
-    const { pairCount, distances, bettiGaps } = computeRows(prepared, rows, control);
-    let offset = 0;
-    for (const p of rows) {
-      const start = offset;
+    const { pairCount, distances, bettiGaps } = computePairs(prepared, choice, control);
+    for (const [i, p] of choice.rows.entries()) {
+      const [start = 0, end] = choice.starts.subarray(i, i + 2);
       yield {
         p,
-        distance: (k, i) => distances[k * pairCount + start + i] ?? NaN,
-        bettiGap: (k, i) => bettiGaps[k * pairCount + start + i] ?? NaN,
+        partners: choice.partners.subarray(start, end),
+        distance: (k, at) => distances[k * pairCount + start + at] ?? NaN,
+        bettiGap: (k, at) => bettiGaps[k * pairCount + start + at] ?? NaN,
       };
-      offset += nodeCount - 1 - p;
     }
     done += pairCount;
   }
 }
 
-function* batches(nodeCount: number): Generator<Uint32Array> {
-  for (let p = 0; p < nodeCount - 1;) {
-    const rows: number[] = [];
-    for (let pairs = 0; p < nodeCount - 1 && pairs < PAIRS_AT_ONCE; p++) {
-      rows.push(p);
-      pairs += nodeCount - 1 - p;
-    }
-    yield Uint32Array.from(rows);
+function* batches(partners: Partners): Generator<PairChoice> {
+  let rows: number[] = [];
+  let lists: Uint32Array[] = [];
+  let pairs = 0;
+  const close = (): PairChoice => {
+    const choice = {
+      rows: Uint32Array.from(rows),
+      starts: new Uint32Array(rows.length + 1),
+      partners: new Uint32Array(pairs),
+    };
+    lists.forEach((list, i) => {
+      const start = choice.starts[i] ?? 0;
+      choice.partners.set(list, start);
+      choice.starts[i + 1] = start + list.length;
+    });
+    [rows, lists, pairs] = [[], [], 0];
+    return choice;
+  };
+  for (let p = 0; p < partners.nodeCount; p++) {
+    const list = partners.of(p);
+    if (list.length === 0) continue;
+    rows.push(p);
+    lists.push(list);
+    pairs += list.length;
+    if (pairs >= PAIRS_AT_ONCE) yield close();
   }
+  if (pairs > 0) yield close();
 }
 
 /** Writes beside the file and renames at the end: a file with this name is always a whole one. */

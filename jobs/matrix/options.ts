@@ -7,10 +7,18 @@ export interface MatrixOptions {
   readonly scale: 'entry' | 'rank';
   /** 0..3; all dimensions up to it are computed. */
   readonly maxDimension: number;
+  /** Which pairs are computed. */
+  readonly part: MatrixPart;
   /** File for pairs.csv; null: not wanted, or on standard output where `barcodes` is null too. */
   readonly pairs: string | null;
   readonly barcodes: string | null;
 }
+
+/** `overlapping`: pairs whose intervals [earliest, latest] overlap. */
+export type MatrixPart =
+  | { readonly kind: 'whole' }
+  | { readonly kind: 'within'; readonly positions: number }
+  | { readonly kind: 'overlapping' };
 
 /** The command was called wrongly; the message says what was wrong and what to do. */
 export class UsageError extends Error {
@@ -18,12 +26,14 @@ export class UsageError extends Error {
 }
 
 export const USAGE = `npm run matrix -- --nodes nodes.csv --edges edges.csv [--scale entry|rank]
-    [--max-dimension 3] [--pairs pairs.csv] [--barcodes barcodes.csv]
+    [--max-dimension 3] [--within k | --overlapping] [--pairs pairs.csv] [--barcodes barcodes.csv]
 
   --nodes          id,label,entry and optionally earliest,latest
   --edges          source,target and optionally weight
   --scale          entry: recorded values (unless told otherwise); rank: steps 1, 2, …
   --max-dimension  0 to 3; 3 unless told otherwise
+  --within         only pairs at most k arrival positions apart
+  --overlapping    only pairs whose intervals from earliest to latest overlap
   --pairs          file for the matrix, one row a pair
   --barcodes       file for the barcode of the recorded order
 
@@ -35,6 +45,8 @@ const OPTIONS = {
   edges: { type: 'string' },
   scale: { type: 'string', default: 'entry' },
   'max-dimension': { type: 'string', default: '3' },
+  within: { type: 'string' },
+  overlapping: { type: 'boolean', default: false },
   pairs: { type: 'string' },
   barcodes: { type: 'string' },
   help: { type: 'boolean', short: 'h' },
@@ -63,7 +75,17 @@ export function readOptions(args: readonly string[]): MatrixOptions | 'help' {
   if (pairs !== null && pairs === barcodes) {
     throw new UsageError(`--pairs and --barcodes are the same file (${pairs}); name two.`);
   }
-  return { nodes, edges, scale, maxDimension: Number(maxDimension), pairs, barcodes };
+  const part = partOf(values);
+  return { nodes, edges, scale, maxDimension: Number(maxDimension), part, pairs, barcodes };
+}
+
+function partOf({ within, overlapping }: { within?: string; overlapping: boolean }): MatrixPart {
+  if (within === undefined) return overlapping ? { kind: 'overlapping' } : { kind: 'whole' };
+  if (overlapping) throw new UsageError('--within and --overlapping are two parts; write one.');
+  if (!/^[1-9]\d{0,6}$/.test(within)) {
+    throw new UsageError(`--within is "${within}"; write a whole number of positions from 1.`);
+  }
+  return { kind: 'within', positions: Number(within) };
 }
 
 function parsed(args: readonly string[]) {
