@@ -115,34 +115,57 @@ describe('records of a delimited file', () => {
   });
 });
 
-describe('lines that are split without csv-parse', () => {
-  const piece = fc.constantFrom('a', 'b', ' ', '"', '""', ',', ';', '\t', '|', 'é', '1,5', "'");
+describe('records as csv-parse reads them', () => {
+  const piece = fc.constantFrom(
+    'a',
+    'b',
+    ' ',
+    '"',
+    '""',
+    ',',
+    ';',
+    '\t',
+    '|',
+    'é',
+    '1,5',
+    "'",
+    '\n',
+    '\r\n',
+  );
 
-  test.each([',', ';', '|'] as const)('are split as csv-parse would, by %s', (delimiter) => {
+  test.each([',', ';', '|'] as const)('by %s', (delimiter) => {
     fc.assert(
       fc.property(fc.array(piece, { minLength: 1, maxLength: 12 }), (pieces) => {
         const text = pieces.join('');
-        fc.pre(text.trim() !== '');
-        expect(outcomeOf(read(text, delimiter))).toEqual(outcomeOf(oracle(text, delimiter)));
+        // After an empty quoted cell and a space csv-parse lets another begin; RFC 4180 does not.
+        fc.pre(!/""[ \t]+"/.test(text));
+        const found = read(text, delimiter).map(([, cells]) => cells);
+        const faults = found.filter((cells) => typeof cells === 'string');
+        // One fault ends csv-parse; here only the record is lost.
+        if (faults.length > 0) expect(oracle(text, delimiter)).toBe('not to be read');
+        else expect(found.filter(isRow)).toEqual(oracle(text, delimiter));
       }),
-      { numRuns: 3000, seed: 1 },
+      { numRuns: 4_000, seed: 1 },
     );
   });
 
-  function oracle(text: string, delimiter: Delimiter): unknown[][] {
+  /** A line of one empty cell, as "" or blank, is left out by all tables. */
+  const isRow = (cells: unknown): boolean =>
+    !Array.isArray(cells) || cells.length > 1 || cells[0] !== '';
+
+  function oracle(text: string, delimiter: Delimiter): unknown {
     try {
       const records: string[][] = parse(text, {
         delimiter,
         trim: true,
         relax_column_count: true,
+        skip_empty_lines: true,
+        record_delimiter: ['\r\n', '\n', '\r'],
       });
-      return records.map((cells) => [1, cells]);
+      return records.filter(isRow);
     } catch (error) {
       if (!(error instanceof CsvError)) throw error;
-      return [[1, error.code]];
+      return 'not to be read';
     }
   }
-
-  const outcomeOf = ([first]: unknown[][]) =>
-    Array.isArray(first?.[1]) ? first[1] : 'not to be read';
 });
