@@ -27,7 +27,7 @@ export class MatrixComputation {
     const { tables, recorded, scale, bars, pulse, links, settled, zeroTests } = foundation;
     // Whatever an earlier computation held has gone with it, except for the store, which has grown.
     tables.budget.used = foundation.bytes + 4 * recorded.store.data.length;
-    this.row = new RowComplex(tables, recorded, scale, pulse, zeroTests);
+    this.row = new RowComplex(tables, recorded, scale, pulse, links, zeroTests);
     this.changes = new Changes(tables.budget, tables.top, scale);
     this.overlay = new Overlay(
       tables,

@@ -4,7 +4,8 @@ import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, type Recorded } from './recorded';
 import type { RowComplex } from './row';
-import { SwappedSum, widestStar } from './swapped-sum';
+import { widestStar } from './stars';
+import { SwappedSum } from './swapped-sum';
 import type { Tables } from './tables';
 
 /** Which part of the swapped complex a row belongs to. */
@@ -207,9 +208,13 @@ export class OverlayColumn extends SwappedSum {
     const holder = this.laterHolder(m);
     if (holder < 0 || holder > later) return false;
     if (this.queued[this.dimension]![holder] === this.base) return false;
+    const { suffix } = this.rowComplex;
+    const pushed = suffix.isPushed(this.dimension, holder, this.q);
     const { start, length } = this.recorded.reduced[this.dimension]!;
-    this.rest.toggleAll(this.recorded.store.data, start[holder]!, start[holder]! + length[holder]!);
-    this.pulse.tick(length[holder]!);
+    const from = pushed ? suffix.startOf(this.dimension, holder) : start[holder]!;
+    const end = pushed ? suffix.endOf(this.dimension, holder) : from + length[holder]!;
+    this.rest.toggleAll(this.recorded.store.data, from, end);
+    this.pulse.tick(end - from);
     return true;
   }
 

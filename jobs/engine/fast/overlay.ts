@@ -71,7 +71,7 @@ export class Overlay {
         until.data[kept++] = until.data[i]!;
       }
       columns.length = until.length = kept;
-      const { head, next, keys, codes } = this.row.suffix[d]!;
+      const { head, next, keys, codes } = this.row.suffix.needed[d]!;
       for (let item = head[q]!; item >= 0; item = next[item]!) {
         columns.push(keys[item]!);
         until.push(codes[item]!);

@@ -1,8 +1,10 @@
 import { Agenda } from './agenda';
 import { RowSet } from './bitset';
+import type { LinkColumns } from './links';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import { mateOfColumn, Status, type Recorded } from './recorded';
+import { RowSuffix } from './row-suffix';
 import { Forecast, RowZeros } from './row-zeros';
 import type { Scale } from './scale';
 import type { Tables } from './tables';
@@ -30,8 +32,8 @@ export class RowComplex {
   readonly finite: readonly Agenda[];
   /** Changes of the number of classes of dimension k (key: birth rank) alive at q in M, not in K. */
   readonly alive: readonly Agenda[];
-  /** Columns of K (key) that need work after q, from this position to the one in `codes`. */
-  readonly suffix: readonly Agenda[];
+  /** Columns of K after q. */
+  readonly suffix: RowSuffix;
 
   /** Number of connected components of M up to each position. */
   readonly components: Int32Array;
@@ -51,6 +53,7 @@ export class RowComplex {
     private readonly recorded: Recorded,
     private readonly scale: Scale,
     private readonly pulse: Pulse,
+    links: readonly (LinkColumns | undefined)[],
     zeroTests: ZeroTests,
   ) {
     const { budget, top, nodeCount, levels } = tables;
@@ -67,10 +70,10 @@ export class RowComplex {
       Array.from({ length: count }, () => new Agenda(budget, nodeCount));
     this.finite = agendas(top);
     this.alive = agendas(top);
-    this.suffix = agendas(top + 1);
     this.components = budget.int32(nodeCount);
     this.unclaimed = levels.slice(0, top).map(() => new IntPool(budget, 64));
     this.rows = new RowSet(budget, Math.max(...levels.slice(0, top).map((level) => level.count)));
+    this.suffix = new RowSuffix(tables, recorded, links, this, pulse);
     this.recordedLength = recorded.store.length;
     this.infinity = nodeCount;
   }
@@ -80,7 +83,8 @@ export class RowComplex {
     const { tables, recorded } = this;
     this.node = a;
     recorded.store.length = this.recordedLength;
-    for (const agenda of [...this.finite, ...this.alive, ...this.suffix]) agenda.clear();
+    for (const agenda of [...this.finite, ...this.alive]) agenda.clear();
+    this.suffix.begin(a);
     for (const pool of this.unclaimed) pool.length = 0;
     for (let d = 0; d < tables.top; d++) {
       this.mate[d]!.set(recorded.mate[d]!);
@@ -160,7 +164,7 @@ export class RowComplex {
       positive = pivot < 0;
       this.compareBars(d, c, status, pivot);
     } else if (status === Status.Negative) this.compareBars(d, c, status, -1);
-    if (touched && status === Status.Negative) this.noteTouched(d, c);
+    if (touched && status === Status.Negative) this.suffix.note(d, c);
     if (d === top) return;
     if (positive && this.mate[d]![s] === -1) this.unclaimed[d]!.push(s);
     this.compareClass(d, s, columns[d]!.position[c]!, status, positive);
@@ -224,27 +228,6 @@ export class RowComplex {
     const deathRank = rank[death]!;
     if (birthRank === deathRank) return;
     this.finite[d - 1]!.add(death + 1, barKey(birthRank, deathRank, value.length), sign);
-  }
-
-  /**
-   * A column of K that still contains a changes whenever it is read after q. One without a never
-   * loses its pivot row r to M before q: what M reduces to r by then is a boundary in K too, so r
-   * would have died in K by then.
-   */
-  private noteTouched(d: number, c: number): void {
-    const { store, reduced } = this.recorded;
-    const { nodes } = this.tables.levels[d - 1]!;
-    const position = this.tables.columns[d]!.position[c]!;
-    const start = reduced[d]!.start[c]!;
-    const birth = nodes[store.data[start]! * d]!;
-    const from = Math.max(birth, this.node + 1);
-    if (from >= position) return;
-    const end = start + reduced[d]!.length[c]!;
-    for (let i = start; i < end; i++) {
-      if (!this.contains(d - 1, store.data[i]!)) continue;
-      this.suffix[d]!.add(from, c, position - 1);
-      return;
-    }
   }
 
   /** Position of the column that kills the class of simplex s, `infinity` if none. */

@@ -118,3 +118,10 @@ export function rowOfUnion(levels: readonly Level[], d: number, union: number): 
   while (nodes[row + slot] !== x) slot++;
   return row + slot;
 }
+
+/** Most rows that a node's star has. */
+export function widestStar({ start }: Star): number {
+  let size = 0;
+  for (let x = 0; x + 1 < start.length; x++) size = Math.max(size, start[x + 1]! - start[x]!);
+  return size;
+}

@@ -4,7 +4,7 @@ import type { IntPool } from './pool';
 import type { Pulse } from './pulse';
 import type { Recorded } from './recorded';
 import type { RowComplex } from './row';
-import type { Star } from './stars';
+import { widestStar } from './stars';
 import type { Tables } from './tables';
 
 /**
@@ -98,6 +98,13 @@ export class SwappedSum {
     const { data } = this.recorded.store;
     const { nodes } = this.tables.levels[d - 1]!;
     const local = this.tables.stars[d - 1]!.local;
+    const { suffix } = this.rowComplex;
+    if (suffix.isPushed(d, c, this.q)) {
+      const end = suffix.endOf(d, c);
+      for (let i = suffix.startOf(d, c); i < end; i++) this.toggleWithoutA(data[i]!);
+      this.pulse.tick(end - suffix.startOf(d, c));
+      return;
+    }
     const from = reduced.start[c]!;
     const to = from + reduced.length[c]!;
     for (let i = from; i < to; i++) {
@@ -139,11 +146,4 @@ export class SwappedSum {
     while (nodes[entry] !== x) entry++;
     return entry;
   }
-}
-
-/** Most rows that a node's star has. */
-export function widestStar({ start }: Star): number {
-  let size = 0;
-  for (let x = 0; x + 1 < start.length; x++) size = Math.max(size, start[x + 1]! - start[x]!);
-  return size;
 }
