@@ -3,15 +3,35 @@ import type { Partners } from './part';
 
 /**
  * What a matrix costs, in seconds of one thread. Common practice, not a law: a pair costs more the
- * more edges a node has and the closer the numbers of loops and of triangles are, because then many
- * long bars change. The factors were fitted to 71 whole matrices on one busy machine (random graphs
- * of four models, n = 30 to 1000, D = 1 to 3): the margin of 5 held on all, 4 on 68. Only counts
- * enter, so every machine plans the same blocks.
+ * more k-cliques a node has and the closer the numbers of k-dimensional holes and of the simplices
+ * that could fill them are, because then many long bars change. The factors were fitted to 84 whole
+ * matrices on one busy machine (random graphs of four models, n = 50 to 1000, D = 1 to 3): the margin
+ * of 5 held on all, 3 on 77. Only counts enter, so every machine plans the same blocks.
  */
-const SECONDS_PER_CLIQUE_SET_UP = 2e-6;
-const SECONDS_PER_CLIQUE_IN_ROWS = 1e-5;
-const SECONDS_PER_PAIR = 1.54e-6;
-const SECONDS_PER_PAIR_AND_DEGREE_CUBED = 9.24e-9;
+const SECONDS_PER_CLIQUE_SET_UP = 9.1e-7;
+const SECONDS_PER_CLIQUE_IN_ROWS = 1.05e-6;
+const SECONDS_PER_PAIR = 8.9e-7;
+
+/** What holes of one dimension k add to a pair. */
+interface HoleCost {
+  readonly seconds: number;
+  /** Of the number of k-simplices per node. */
+  readonly power: number;
+  /** Of the number of fillers per hole, while there are fewer than holes. */
+  readonly rise: number;
+  /** The same, while there are more. */
+  readonly fall: number;
+}
+
+/** Dimensions 1, 2, 3. */
+const HOLE_COSTS: readonly HoleCost[] = [
+  { seconds: 2.4e-7, power: 2.06, rise: 0.54, fall: 1.22 },
+  { seconds: 1.5e-7, power: 2, rise: 8.7, fall: 4.3 },
+  { seconds: 4.7e-11, power: 3, rise: 12, fall: 2.7 },
+];
+/** Power of how unevenly cliques end, against how unevenly nodes take part in them. */
+const POWER_OF_LATE_CLIQUES = 0.76;
+
 /**
  * Share of a row that is spent before its first pair. Common practice: 0.05 to 0.3 on five of six
  * graphs of 80 to 400 nodes, up to the whole row where almost no swap changes a bar.
@@ -70,10 +90,28 @@ export function partSeconds(counts: CliqueCounts, partners: Partners): number {
   return cost.whole.reduce((sum, _, p) => sum + cost.of(p, partners.of(p)), 0);
 }
 
-function secondsPerPair({ bySize }: CliqueCounts): number {
-  const [nodes = 0, edges = 0, triangles = 0] = bySize;
-  const loops = Math.max(0, edges - nodes + 1);
-  const balance = Math.min(loops, triangles) / (Math.max(loops, triangles) + 1);
-  const degree = nodes > 0 ? (2 * edges) / nodes : 0;
-  return SECONDS_PER_PAIR + SECONDS_PER_PAIR_AND_DEGREE_CUBED * degree ** 3 * balance ** 2;
+/** Holes of dimension k are the k-simplices that fill no hole of dimension k - 1. */
+function secondsPerPair({ bySize, latest, containing }: CliqueCounts): number {
+  const nodes = Math.max(1, bySize[0] ?? 0);
+  let holes = Math.max(0, (bySize[1] ?? 0) - nodes + 1);
+  let seconds = SECONDS_PER_PAIR;
+  HOLE_COSTS.forEach(({ seconds: one, power, rise, fall }, i) => {
+    const fillers = bySize[i + 2];
+    if (fillers === undefined) return;
+    const balance = fillers / (holes + 1);
+    const share = balance < 1 ? balance ** rise : balance ** -fall;
+    seconds += one * ((bySize[i + 1] ?? 0) / nodes) ** power * share;
+    holes = Math.max(0, fillers - holes);
+  });
+  return seconds * (unevenness(latest) / unevenness(containing)) ** POWER_OF_LATE_CLIQUES;
+}
+
+/** Quadratic over arithmetic mean, at least 1. */
+function unevenness(counts: Float64Array): number {
+  let [sum, squares] = [0, 0];
+  for (const count of counts) {
+    sum += count;
+    squares += count * count;
+  }
+  return sum > 0 ? Math.sqrt(squares * counts.length) / sum : 1;
 }

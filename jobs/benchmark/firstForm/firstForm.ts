@@ -48,7 +48,8 @@ export class FirstForm implements BarReceiver {
   constructor(private readonly foundation: Foundation) {
     const { tables, recorded, scale, pulse } = foundation;
     const dimensions = Array.from({ length: tables.top }, (_, k) => k);
-    this.row = new RowComplex(tables, recorded, scale, pulse, 'never');
+    const noLinks = tables.levels.map(() => undefined);
+    this.row = new RowComplex(tables, recorded, scale, pulse, noLinks, 'never');
     this.classes = dimensions.map((k) => new RowClasses(tables, recorded, this.row, scale, k));
     this.suffix = tables.levels.map((_, d) => {
       const none = { start: new Int32Array(tables.nodeCount + 1), columns: new Int32Array(0) };
