@@ -13,21 +13,30 @@ const ENDINGS: readonly (readonly [RegExp, GraphFormat])[] = [
  * @param head the first characters of the file
  */
 export function detectFormat(head: string, name: string): GraphFormat | null {
-  const start = head.replace(/^(?:\s|<\?xml[^>]*>|<!--[\s\S]*?-->|<!DOCTYPE[^>]*>)+/i, '');
-  if (/^<(?:\w+:)?graphml[\s>]/i.test(start)) return 'graphml';
-  if (/^<(?:\w+:)?gexf[\s>]/i.test(start)) return 'gexf';
-  if (/^[{[]/.test(start)) return 'node_link';
-  if (/^\*\s*(?:network|vertices|matrix|edges|arcs|partition)/im.test(withoutComments(start, '%')))
+  const start = head.trimStart();
+  const byName = ENDINGS.find(([pattern]) => pattern.test(name))?.[1] ?? null;
+  if (/^<[?!\w]/.test(start)) return xmlFormat(start) ?? byName ?? 'graphml';
+  if (/^(?:\{\s*["}]|\[\s*[[{"\]])/.test(start)) return 'node_link';
+  if (/^\*\s*(?:network|vertices|matrix|edges|arcs|partition)/i.test(withoutComments(start, '%')))
     return 'pajek';
-  if (
-    /^(?:creator\b[^\n\r]*|version\b[^\n\r]*|comment\b[^\n\r]*|\s)*graph\s*\[/i.test(
-      withoutComments(start, '#'),
-    )
-  )
-    return 'gml';
-  const ending = ENDINGS.find(([pattern]) => pattern.test(name));
-  if (ending) return ending[1];
-  return start.startsWith('<') ? 'graphml' : null;
+  if (GML.test(withoutComments(start, '#'))) return 'gml';
+  return byName;
+}
+
+/** Lines like `Creator "…"` may stand before the graph. */
+const GML = /^(?:(?:creator|version|comment|directed)\b[^\n\r]*\s+){0,20}graph\s*\[/i;
+
+/** By the first element that is known, whatever stands before it. */
+function xmlFormat(text: string): GraphFormat | null {
+  const [, element = ''] = /<(?:\w+:)?(graphml|gexf)[\s>/]/i.exec(text) ?? [];
+  switch (element.toLowerCase()) {
+    case 'graphml':
+      return 'graphml';
+    case 'gexf':
+      return 'gexf';
+    default:
+      return null;
+  }
 }
 
 /** The text from its first line that is no comment. */
