@@ -7,6 +7,7 @@ import { useBenchRunStore } from '../stores/benchRun';
 import { useBenchCursor } from './benchCursor';
 import { useBenchDetail } from './benchDetail';
 import { useBenchFields } from './benchFields';
+import { useBenchFocus } from './benchFocus';
 import { useBenchInks } from './benchInks';
 import type { BenchNetwork } from './benchNetwork';
 import { benchPairs } from './benchPairs';
@@ -34,6 +35,12 @@ function makeBench(subject: BenchSubject) {
   const pairs = benchPairs(run(), matrix, network, amount);
   const { order } = network.filtration;
   useBenchDetail({ workspaceId: subject.workspaceId, runId }, matrix, order, () => view.value.pair);
+  useBenchFocus(
+    subject.workspaceId,
+    () => view.value,
+    order,
+    () => ended.value,
+  );
   const choice = computed(() => view.value.group);
   const group = useMarkedGroup(choice, network, () => fields.communities.value?.communities ?? []);
   return {

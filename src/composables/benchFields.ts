@@ -45,7 +45,7 @@ export function useBenchFields({ matrix, network, dimensions, view, ended }: Fie
       measureField(matrix, values, name.value, name.value === 'moves' ? dimensions : shown.value),
     );
 
-  const complete = live(() => matrix.knownCount === matrix.pairCount);
+  const complete = live(() => matrix.knownCount >= matrix.coveredCount);
   const safe = live(() => safePairs(matrix, dimensions));
   const communities = useBenchCommunities(() =>
     ended.value || complete.value ? { nodeCount: matrix.nodeCount, safe: safe.value } : null,

@@ -47,7 +47,11 @@ export function benchPairs(run: Run, matrix: SwapMatrix, network: BenchNetwork, 
     const figures = figuresOf(pair);
     const heading = `${label(pair.p)} ⇄ ${label(pair.q)}`;
     const places = `arrivals ${pair.p + 1} and ${pair.q + 1}`;
-    if (figures === null) return [heading, places, 'not computed yet'];
+    if (figures === null) {
+      const index = pairIndex(matrix.nodeCount, pair.p, pair.q);
+      const why = matrix.covers(index) ? 'not computed yet' : 'not computed: no part of this run';
+      return [heading, places, why];
+    }
     const change =
       figures.distance === 0
         ? 'swap-safe: no bar moves'

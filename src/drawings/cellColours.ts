@@ -1,15 +1,17 @@
 import { rgb } from 'd3';
-import type { MeasureField } from '../graphs/measures';
+import { OUTSIDE, type MeasureField } from '../graphs/measures';
 import { changeRamp, dimensionColour, rampColour, rampEntry, RAMP_SIZE } from './ramp';
 
 /** Pair has not landed. */
 export const OPEN = -1;
+/** Pair is no part of the run. */
+export const LEFT_OUT = -2;
 /** Nothing changes. */
 export const WOVEN = 0;
 
 /** Paint of every class of cell: class 1.. is drawn in `colours[class - 1]`. */
 export interface CellPaint {
-  /** OPEN, WOVEN, or 1 + entry of `colours`, by pair index. */
+  /** LEFT_OUT, OPEN, WOVEN, or 1 + entry of `colours`, by pair index. */
   readonly classes: Int16Array;
   readonly colours: readonly string[];
   /** Red, green, blue of `colours`. */
@@ -24,6 +26,7 @@ export function paintCells(field: MeasureField, dark: boolean): CellPaint {
   for (let i = 0; i < values.length; i += 1) {
     const value = values[i] ?? NaN;
     if (Number.isNaN(value)) classes[i] = OPEN;
+    else if (value === OUTSIDE) classes[i] = LEFT_OUT;
     else if (value === 0) classes[i] = WOVEN;
     else classes[i] = 1 + (categories ? value - 1 : rampEntry(value / ceiling));
   }

@@ -2,7 +2,7 @@ import { rgb } from 'd3';
 import { pairIndex } from '../graphs/swapMatrix';
 import { xAt } from './arrivalAxis';
 import { weavePattern } from './canvasLayer';
-import { OPEN, WOVEN, type CellPaint } from './cellColours';
+import { LEFT_OUT, OPEN, WOVEN, type CellPaint } from './cellColours';
 import { cellCentre, type ClothGeometry } from './clothGeometry';
 import type { Inks } from './inks';
 
@@ -53,11 +53,14 @@ function paintPaths(
       const kind = paint.classes[pairIndex(axis.nodeCount, p, q)] ?? OPEN;
       let path = paths.get(kind);
       if (path === undefined) paths.set(kind, (path = new Path2D()));
-      addLozenge(path, cloth, p, q, kind === OPEN ? gap + axis.step * 0.12 : gap);
+      addLozenge(path, cloth, p, q, gapOf(kind, gap, axis.step));
     }
   }
   for (const [kind, path] of paths) {
-    if (kind === OPEN) {
+    if (kind === LEFT_OUT) {
+      context.fillStyle = inks.edge;
+      context.fill(path);
+    } else if (kind === OPEN) {
       context.strokeStyle = inks.hairline;
       context.lineWidth = 1;
       context.stroke(path);
@@ -71,8 +74,20 @@ function paintPaths(
   }
 }
 
+/** An open cell is a smaller outline; of a pair that is left out a knot stays, where no thread was laid. */
+function gapOf(kind: number, gap: number, step: number): number {
+  if (kind === LEFT_OUT) return step / 2 - Math.min(1.5, step / 6);
+  return kind === OPEN ? gap + step * 0.12 : gap;
+}
+
 /** The second thread of the weave: a little off the first, towards the ground. */
 export const weaveInk = (inks: Inks): string => (inks.dark ? '#313c4c' : '#f5f1e7');
+
+/** Opacity where nothing is computed: lines for open cells, single knots for those left out. */
+function sparse(kind: number, p: number, q: number): number {
+  if (kind === OPEN) return (p % 4) * (q % 4) === 0 ? 90 : 0;
+  return p % 4 === 0 && q % 4 === 0 ? 130 : 0;
+}
 
 /**
  * The n × n square as an image, turned so that rows and columns become the two slopes of the cloth.
@@ -103,11 +118,11 @@ function paintImage(
         image.data[at + 3] = 255;
         continue;
       }
-      const colour = kind === OPEN ? open : (p + 2 * q) % 6 < 3 ? thread : weave;
+      const colour = kind < WOVEN ? open : (p + 2 * q) % 6 < 3 ? thread : weave;
       image.data[at] = colour.r;
       image.data[at + 1] = colour.g;
       image.data[at + 2] = colour.b;
-      image.data[at + 3] = kind === OPEN ? ((p % 4) * (q % 4) === 0 ? 90 : 0) : 255;
+      image.data[at + 3] = kind < WOVEN ? sparse(kind, p, q) : 255;
     }
   }
   pen.putImageData(image, 0, 0);

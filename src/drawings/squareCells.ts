@@ -1,6 +1,6 @@
 import { rgb } from 'd3';
 import { weaveInk } from './clothCells';
-import { WOVEN, type CellPaint } from './cellColours';
+import { LEFT_OUT, WOVEN, type CellPaint } from './cellColours';
 import type { Inks } from './inks';
 import type { SquareGeometry } from './squareGeometry';
 
@@ -36,7 +36,7 @@ export function paintSquare(
       const from = 3 * (cell.kind - 1);
       if (cell.kind > WOVEN) image.data.set(cell.paint.bytes.subarray(from, from + 3), at);
       else image.data.set([thread.r, thread.g, thread.b], at);
-      image.data[at + 3] = cell.kind >= WOVEN ? 255 : (row + column) % 2 === 0 ? 110 : 0;
+      image.data[at + 3] = cell.kind >= WOVEN ? 255 : sparse(cell.kind, row, column);
     }
   }
   pen.putImageData(image, 0, 0);
@@ -44,6 +44,12 @@ export function paintSquare(
   context.drawImage(sheet, square.left, square.top, square.size, square.size);
   rule(context, square, scene.inks);
   if (square.named) nameSquare(context, square, scene.labels, scene.inks);
+}
+
+/** Opacity where nothing is computed: every other cell is pale while it is awaited, few where left out. */
+function sparse(kind: number, row: number, column: number): number {
+  if (kind === LEFT_OUT) return row % 3 === 0 && column % 3 === 0 ? 110 : 0;
+  return (row + column) % 2 === 0 ? 110 : 0;
 }
 
 /** Gaps between the cells, and the frame. */

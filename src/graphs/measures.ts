@@ -4,12 +4,15 @@ import type { SwapMatrix } from './swapMatrix';
 export const MEASURES = ['change', 'distance', 'betti', 'moves', 'bound'] as const;
 export type Measure = (typeof MEASURES)[number];
 
+/** The value of a pair that the run does not cover: below every other, so that no threshold takes it. */
+export const OUTSIDE = -Infinity;
+
 /** One value per pair, in the order of `pairIndex`. */
 export interface MeasureField {
   readonly measure: Measure;
   /** The dimensions the values were taken over. */
   readonly dimensions: readonly number[];
-  /** NaN where the pair has not landed, 0 where nothing changes. `moves`: dimension + 1. */
+  /** NaN where the pair has not landed, OUTSIDE where the run does not cover it, 0 where nothing changes. `moves`: dimension + 1. */
   readonly values: Float64Array;
   /** Upper end of the colour ramp: 1 for `change`, else the largest value; at least the least positive. */
   readonly ceiling: number;
@@ -56,7 +59,9 @@ export function measureField(
       const bound = (values[q] ?? 0) - (values[p] ?? 0);
       const value =
         matrix.known[index] === 0 && measure !== 'bound'
-          ? NaN
+          ? matrix.covers(index)
+            ? NaN
+            : OUTSIDE
           : valueOf(matrix, measure, dimensions, index, bound);
       field[index] = value;
       if (value > largest) largest = value;

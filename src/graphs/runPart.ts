@@ -61,3 +61,18 @@ function takeOverlaps(nodes: readonly ArrivedNode[], take: (p: number, q: number
     }
   }
 }
+
+/**
+ * Which pairs a run covers, by pair index; null where it covers every pair.
+ * @param nodes in row order
+ */
+export function coveredPairs(
+  part: RunPart,
+  nodes: readonly Omit<ArrivedNode, 'row'>[],
+): Uint8Array | null {
+  if (part.kind === 'whole') return null;
+  const arrived = nodes
+    .map(({ entry, earliest, latest }, row) => ({ entry, earliest, latest, row }))
+    .sort((a, b) => a.entry - b.entry || a.row - b.row);
+  return partMask(part, arrived);
+}

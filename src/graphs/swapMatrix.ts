@@ -35,13 +35,20 @@ export class SwapMatrix {
   /** 1 where the pair has landed. */
   readonly known: Uint8Array;
   knownCount = 0;
+  /** Pairs that the run covers. */
+  readonly coveredCount: number;
 
-  /** @param dimensionCount dimensions 0..dimensionCount - 1 are stored. */
+  /**
+   * @param dimensionCount dimensions 0..dimensionCount - 1 are stored.
+   * @param covered 1 by pair index where the run covers the pair; null where it covers every pair.
+   */
   constructor(
     readonly nodeCount: number,
     readonly dimensionCount: number,
+    private readonly covered: Uint8Array | null = null,
   ) {
     this.pairCount = pairsOf(nodeCount);
+    this.coveredCount = covered?.reduce((sum, one) => sum + one, 0) ?? this.pairCount;
     this.distances = new Float64Array(dimensionCount * this.pairCount);
     this.bettiGaps = new Int32Array(dimensionCount * this.pairCount);
     this.known = new Uint8Array(this.pairCount);
@@ -96,6 +103,11 @@ export class SwapMatrix {
   #know(index: number): void {
     if (this.known[index] === 0) this.knownCount += 1;
     this.known[index] = 1;
+  }
+
+  /** Whether the run covers the pair: it is known then, or will be. */
+  covers(index: number): boolean {
+    return this.covered === null || this.covered[index] === 1;
   }
 
   isKnown(p: number, q: number): boolean {

@@ -2,11 +2,12 @@ import { markRaw, ref, shallowRef } from 'vue';
 import { defineStore } from 'pinia';
 import type { Revision } from '#contract/datasets';
 import type { ProgressEvent } from '#contract/progress';
-import type { RecordedBarcode, Run } from '#contract/runs';
-import { asProblem, type ApiProblem } from '../api/client';
+import type { RecordedBarcode, Run, RunFocusRequest } from '#contract/runs';
+import { ApiProblem, asProblem } from '../api/client';
 import { getRevision } from '../api/datasets';
 import { followRun } from '../api/progress';
-import { getBarcode, getRun, getRunBlock, stopRun } from '../api/runs';
+import { extendRun, focusRun, getBarcode, getRun, getRunBlock, stopRun } from '../api/runs';
+import { coveredPairs } from '../graphs/runPart';
 import { SwapMatrix } from '../graphs/swapMatrix';
 
 /** Blocks fetched at the same time. */
@@ -23,6 +24,7 @@ export const useBenchRunStore = defineStore('benchRun', () => {
   const millisecondsLeft = ref<number | null>(null);
   const streamDown = ref(false);
   const stopping = ref(false);
+  const extending = ref(false);
   const problem = shallowRef<ApiProblem | null>(null);
 
   let opened = 0;
@@ -39,7 +41,9 @@ export const useBenchRunStore = defineStore('benchRun', () => {
       ]);
       if (visit !== opened) return;
       const dimensions = Math.max(...found.dimensions) + 1;
-      matrix.value = markRaw(new SwapMatrix(found.nodeCount, dimensions));
+      matrix.value = markRaw(
+        new SwapMatrix(found.nodeCount, dimensions, coveredPairs(found.part, network.nodes)),
+      );
       revision.value = markRaw(network);
       barcode.value = bars;
       run.value = found;
@@ -159,6 +163,32 @@ export const useBenchRunStore = defineStore('benchRun', () => {
     }
   }
 
+  /** Computes the pairs that the run left out, and follows it again. */
+  async function extend(workspaceId: string): Promise<void> {
+    if (run.value === null) return;
+    const { id } = run.value;
+    extending.value = true;
+    try {
+      await extendRun(workspaceId, id);
+      await open(workspaceId, id);
+    } catch (error) {
+      problem.value = asProblem(error);
+    } finally {
+      extending.value = false;
+    }
+  }
+
+  /** Tells the server what is looked at while the run goes. */
+  async function focus(workspaceId: string, looked: RunFocusRequest): Promise<void> {
+    if (run.value === null) return;
+    try {
+      await focusRun(workspaceId, run.value.id, looked);
+    } catch (error) {
+      // Only the order of the blocks depends on it: a run that has just ended refuses, and all is there.
+      if (!(error instanceof ApiProblem)) throw error;
+    }
+  }
+
   function close(): void {
     opened += 1;
     leave();
@@ -181,9 +211,12 @@ export const useBenchRunStore = defineStore('benchRun', () => {
     millisecondsLeft,
     streamDown,
     stopping,
+    extending,
     problem,
     open,
     stop,
+    extend,
+    focus,
     close,
   };
 });

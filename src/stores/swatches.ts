@@ -5,6 +5,7 @@ import { ApiProblem } from '../api/client';
 import { getRevision } from '../api/datasets';
 import { getBarcode, getRun, getRunBlock } from '../api/runs';
 import { filtrationOf } from '../graphs/filtration';
+import { coveredPairs } from '../graphs/runPart';
 import { measureField, type MeasureField } from '../graphs/measures';
 import { SwapMatrix } from '../graphs/swapMatrix';
 
@@ -55,7 +56,8 @@ async function fetchSwatch(workspaceId: string, runId: string): Promise<Swatch> 
   const { values } = filtrationOf(entries, scale);
   const base = { nodeCount, values, dimensions, bars: barcode.bars };
   if (nodeCount > MOST_NODES) return { ...base, field: null };
-  const matrix = new SwapMatrix(nodeCount, Math.max(...dimensions) + 1);
+  const covered = coveredPairs(run.part, revision.nodes);
+  const matrix = new SwapMatrix(nodeCount, Math.max(...dimensions) + 1, covered);
   for (const block of run.blocksDone) matrix.place(await getRunBlock(workspaceId, runId, block));
   return { ...base, field: measureField(matrix, values, 'change', dimensions) };
 }

@@ -43,7 +43,7 @@ function drawCloth(
   for (let p = 0; p < nodeCount; p += 1) {
     for (let q = p + 1; q < nodeCount; q += 1, index += 1) {
       const paint = classes[index] ?? OPEN;
-      if (paint === OPEN) continue;
+      if (paint < WOVEN) continue;
       const x = xOf((p + q) / 2, step);
       const y = AXIS - (q - p) * rise;
       pencil.fillStyle = paint === WOVEN ? inks.thread : (colours[paint - 1] ?? inks.thread);
