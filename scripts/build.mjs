@@ -14,11 +14,12 @@ import { root } from './paths.mjs';
 /** Output name in dist/ → entry file. An entry that does not exist is left out, and said. */
 const ENTRIES = {
   server: 'server/main.ts',
-  parseThread: 'server/datasets/parseThread.ts',
+  reading: 'server/reading/child.ts',
   worker: 'jobs/main.ts',
   thread: 'jobs/pool/thread.ts',
   matrix: 'jobs/matrix.ts',
   bench: 'jobs/benchmark/main.ts',
+  firstForm: 'jobs/benchmark/firstForm/thread.ts',
   seed: 'server/seed.ts',
   migrate: 'db/migrate.ts',
 };

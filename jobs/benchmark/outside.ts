@@ -2,16 +2,11 @@
 import { execFileSync } from 'node:child_process';
 import { performance } from 'node:perf_hooks';
 import { join } from 'node:path';
+import { z } from 'zod';
 import type { Network } from '../engine/types';
+import { median } from './figures';
 import { seeded } from './graphs';
-
-const secondsSince = (start: number): number => (performance.now() - start) / 1000;
-
-export function median(values: readonly number[]): number {
-  const sorted = [...values].sort((x, y) => x - y);
-  const middle = sorted.length >> 1;
-  return sorted.length % 2 === 1 ? sorted[middle]! : (sorted[middle - 1]! + sorted[middle]!) / 2;
-}
+import { secondsSince } from './poolRuns';
 
 /** Pairs of node rows drawn uniformly, the same for the same seed. */
 export function sampleSwaps(nodeCount: number, count: number): [number, number][] {
@@ -27,44 +22,71 @@ function edgesOf({ edges }: Network): [number, number][] {
   return Array.from({ length: edges.length / 2 }, (_, e) => [edges[2 * e]!, edges[2 * e + 1]!]);
 }
 
-/** Seconds of each swap in a loop over GUDHI, its own bottleneck distance included. */
+const loopOutput = z.strictObject({
+  plain: z.array(z.number()),
+  collapsed: z.array(z.number()),
+  kept: z.array(z.number()),
+  distances: z.array(z.number()),
+  disagreements: z.number(),
+  bytes: z.number(),
+});
+
+/** Seconds per swap of loops over GUDHI, its own bottleneck distance included. */
+export interface GudhiTimes {
+  /** The better of a complex built anew and one whose edges are collapsed first. */
+  readonly better: { readonly name: 'plain' | 'collapsed'; readonly seconds: readonly number[] };
+  /** A complex that is built once and whose values are assigned anew. */
+  readonly kept: readonly number[];
+  /** Swaps of the sample whose barcodes differ between the three. */
+  readonly disagreements: number;
+  readonly bytes: number;
+}
+
+/** What of the sample can be done within `limit` seconds. */
 export function gudhiSeconds(
   network: Network,
   top: number,
   swaps: readonly [number, number][],
-): number[] {
-  const input = {
-    n: network.nodeCount,
-    edges: edgesOf(network),
-    values: [...network.values],
-    top,
-    swaps,
-  };
+  limit: number,
+): GudhiTimes {
+  const { nodeCount: n, values } = network;
+  const input = { n, edges: edgesOf(network), values: [...values], top, swaps, seconds: limit };
   const output = execFileSync('/usr/bin/python3', [join('jobs', 'benchmark', 'gudhiLoop.py')], {
     input: JSON.stringify(input),
     encoding: 'utf8',
     maxBuffer: 2 ** 26,
   });
-  const seconds: unknown = JSON.parse(output);
-  if (!Array.isArray(seconds)) throw new Error('The loop over GUDHI gave no list of seconds.');
-  return seconds.map(Number);
+  const { distances, disagreements, bytes, ...ways } = loopOutput.parse(JSON.parse(output));
+  const whole = (way: keyof typeof ways) => ways[way].map((own, i) => own + distances[i]!);
+  const [plain, collapsed] = [whole('plain'), whole('collapsed')];
+  const better =
+    median(collapsed) < median(plain)
+      ? ({ name: 'collapsed', seconds: collapsed } as const)
+      : ({ name: 'plain', seconds: plain } as const);
+  return { better, kept: whole('kept'), disagreements, bytes };
 }
 
-/** Seconds of ripser for each swap, its start (measured on one edge) taken off; barcodes only. */
+/**
+ * Seconds of ripser for each swap, its start (measured on one edge) taken off; barcodes only. Swaps
+ * that are not begun within `limit` seconds are left out.
+ */
 export function ripserSeconds(
   network: Network,
   top: number,
   swaps: readonly [number, number][],
+  limit: number,
 ): number[] {
   const start = Math.min(...Array.from({ length: 5 }, () => timed('1', 2, top)));
-  return swaps.map(([u, v]) => {
+  const began = performance.now();
+  const seconds: number[] = [];
+  for (const [u, v] of swaps) {
+    if (secondsSince(began) > limit) break;
     const values = network.values.slice();
     [values[u], values[v]] = [values[v]!, values[u]!];
-    return Math.max(
-      0,
-      timed(lowerDistances({ ...network, values }), network.nodeCount, top) - start,
-    );
-  });
+    const input = lowerDistances({ ...network, values });
+    seconds.push(Math.max(0, timed(input, network.nodeCount, top) - start));
+  }
+  return seconds;
 }
 
 function timed(input: string, nodeCount: number, top: number): number {

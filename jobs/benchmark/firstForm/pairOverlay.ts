@@ -2,7 +2,7 @@ import { ColumnHeap } from '../../engine/fast/heap';
 import type { RowComplex } from '../../engine/fast/row';
 import type { StarColumns } from '../../engine/fast/star-columns';
 import type { Tables } from '../../engine/fast/tables';
-import type { PairColumn} from './pairColumn';
+import type { PairColumn } from './pairColumn';
 import { Part } from './pairColumn';
 import type { SuffixList } from './suffixList';
 

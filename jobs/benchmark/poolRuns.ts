@@ -1,0 +1,102 @@
+import { setMaxListeners } from 'node:events';
+import { join } from 'node:path';
+import { performance } from 'node:perf_hooks';
+import type { Limits, Network } from '../engine/types';
+import { openPool, type Pool } from '../pool/pool';
+import type { Outcome, Subject } from '../pool/tasks';
+import { constantProbability } from './graphs';
+import { beginPeak, peakBytes } from './peakMemory';
+
+export const LIMITS: Limits = { simplices: 200_000_000, bytes: 8 * 2 ** 30 };
+/** As the worker plans, unless it is told otherwise. */
+const SECONDS_PER_BLOCK = 1.5;
+
+const never = new AbortController().signal;
+// Every task of a matrix listens at once.
+setMaxListeners(0, never);
+let subjects = 0;
+
+export const secondsSince = (start: number): number => (performance.now() - start) / 1000;
+
+/** A pool of so many threads with one of the built scripts. */
+export function poolOf(threads: number, script: 'thread' | 'firstForm' = 'thread'): Pool {
+  return openPool({
+    script: join(import.meta.dirname, `${script}.js`),
+    threads,
+    heapMegabytes: 4096,
+    onError: (error) => console.error(error),
+  });
+}
+
+/** A network under a key of its own, so that no thread has met it. */
+export function freshSubject(network: Network, maxDimension: number): Subject {
+  return { key: `${subjects++}`, network, maxDimension, limits: LIMITS };
+}
+
+function resultOf<R>(outcome: Outcome<R>): R {
+  if (outcome.kind !== 'finished') throw new Error(`A task ended as ${JSON.stringify(outcome)}.`);
+  return outcome.result;
+}
+
+/** The whole matrix as a worker computes it, plan and tables included; returns its seconds. */
+export async function wholeMatrix(
+  pool: Pool,
+  network: Network,
+  maxDimension: number,
+): Promise<number> {
+  const subject = freshSubject(network, maxDimension);
+  const start = performance.now();
+  const plan = { secondsPerBlock: SECONDS_PER_BLOCK, part: { kind: 'whole' } as const };
+  const { blocks } = resultOf(
+    await pool.run<'plan'>({ kind: 'plan', subject, stored: null, ...plan }, never),
+  );
+  await Promise.all(
+    blocks.map(async ({ rows }) =>
+      resultOf(await pool.run<'rows'>({ kind: 'rows', subject, rows }, never)),
+    ),
+  );
+  return secondsSince(start);
+}
+
+/** The rows, each a task, in the order given; returns their seconds. */
+export async function someRows(pool: Pool, subject: Subject, rows: Uint32Array): Promise<number> {
+  const start = performance.now();
+  const tasks = Array.from(rows, (p) =>
+    pool.run<'rows'>({ kind: 'rows', subject, rows: Uint32Array.of(p) }, never),
+  );
+  for (const outcome of await Promise.all(tasks)) resultOf(outcome);
+  return secondsSince(start);
+}
+
+/** Lets all threads of the engine compile their code on a small matrix. */
+export async function warmUp(pool: Pool): Promise<void> {
+  for (let seed = 0; seed < 3; seed++) {
+    await wholeMatrix(pool, constantProbability(60, 0.4, 100 + seed), 3);
+  }
+}
+
+export interface MatrixTimes {
+  /** Seconds of each repetition. */
+  readonly seconds: number[];
+  /** Most resident bytes of the process during the first one. */
+  readonly bytes: number;
+}
+
+/** A matrix several times; a long one is not repeated. */
+export async function matrixTimes(
+  pool: Pool,
+  network: Network,
+  maxDimension: number,
+  repeats: number,
+): Promise<MatrixTimes> {
+  beginPeak();
+  const seconds = [await wholeMatrix(pool, network, maxDimension)];
+  const bytes = peakBytes();
+  while (seconds.length < repeats && seconds[0]! * repeats < LONG) {
+    seconds.push(await wholeMatrix(pool, network, maxDimension));
+  }
+  return { seconds, bytes };
+}
+
+/** Seconds that the repetitions of a matrix may take together. */
+const LONG = 60;
