@@ -17,7 +17,12 @@ export function guessRole(file: string, { columns, preview }: RawTable): TableRo
   if (EDGE_FILE.test(file)) return 'edges';
   if (NODE_FILE.test(file)) return 'nodes';
   if (hasEnds) return 'edges';
-  return roleByContent(preview.map(({ cells }) => cells));
+  const rows = preview.map(({ cells }) => cells);
+  // Lists of numbered nodes without names of columns are edges: 1 2.
+  const unnamed = columns.every((name, at) => name === `column ${at + 1}`);
+  if (unnamed && rows.every((cells) => cells.slice(0, 2).every((cell) => /^\d+$/.test(cell))))
+    return 'edges';
+  return roleByContent(rows);
 }
 
 /** Whether a column that is called like an id has a value of its own in every row. */
