@@ -55,7 +55,7 @@ const environment = {
   PUBLIC_URL: `http://127.0.0.1:${port}`,
   HEDDLE_QUEUE_PREFIX: database,
   HEDDLE_SPA_DIR: join(root, 'dist/spa'),
-  HEDDLE_PARSE_THREAD: join(root, 'dist/parseThread.js'),
+  HEDDLE_READING_SCRIPT: join(root, 'dist/reading.js'),
   HEDDLE_THREADS: '1',
   LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn',
 };

@@ -51,7 +51,7 @@ await asCommand(async () => {
     PORT: String(port),
     HEDDLE_DEMO: '1',
     HEDDLE_DEV_API: `http://127.0.0.1:${port}`,
-    HEDDLE_PARSE_THREAD: join(root, 'dist/parseThread.js'),
+    HEDDLE_READING_SCRIPT: join(root, 'dist/reading.js'),
     HEDDLE_THREAD: join(root, 'dist/thread.js'),
     HEDDLE_MAIL_DIR: join(stateDir, 'mail'),
   };

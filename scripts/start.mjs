@@ -49,7 +49,7 @@ async function instance({ databaseUrl, redisUrl }) {
     PUBLIC_URL: process.env.PUBLIC_URL ?? address,
     HEDDLE_DEMO: demo ? '1' : '0',
     HEDDLE_SPA_DIR: join(root, 'dist/spa'),
-    HEDDLE_PARSE_THREAD: join(root, 'dist/parseThread.js'),
+    HEDDLE_READING_SCRIPT: join(root, 'dist/reading.js'),
     HEDDLE_MAIL_DIR: process.env.HEDDLE_MAIL_DIR ?? join(stateDir, 'mail'),
   };
   return { address, demo, environment };

@@ -37,8 +37,8 @@ const environment = z.object({
   HEDDLE_DEMO: z.preprocess(filled, z.enum(['0', '1']).default('0')),
   /** Folder of the built browser application; without it only the API is served. */
   HEDDLE_SPA_DIR: z.preprocess(filled, text.optional()),
-  /** The built script of the thread that reads uploads. */
-  HEDDLE_PARSE_THREAD: z.preprocess(filled, text.default('dist/parseThread.js')),
+  /** The built script of the process that reads uploads. */
+  HEDDLE_READING_SCRIPT: z.preprocess(filled, text.default('dist/reading.js')),
   /** Where uploads lie while they are read; the system's temporary folder unless told otherwise. */
   HEDDLE_UPLOAD_DIR: z.preprocess(filled, text.default(tmpdir())),
   /** Least severe line that is logged. */
@@ -61,7 +61,7 @@ export interface ServerConfig {
   readonly trustedProxies: number;
   readonly demo: boolean;
   readonly spaFolder: string | null;
-  readonly parseThread: string;
+  readonly readingScript: string;
   readonly uploadFolder: string;
   readonly logLevel: string;
 }
@@ -101,7 +101,7 @@ export function readConfig(source: NodeJS.ProcessEnv = process.env): ServerConfi
     trustedProxies: env.TRUSTED_PROXIES,
     demo: env.HEDDLE_DEMO === '1',
     spaFolder: env.HEDDLE_SPA_DIR ?? null,
-    parseThread: env.HEDDLE_PARSE_THREAD,
+    readingScript: env.HEDDLE_READING_SCRIPT,
     uploadFolder: env.HEDDLE_UPLOAD_DIR,
     logLevel: env.LOG_LEVEL,
   };

@@ -7,10 +7,10 @@ import { createApp } from './app';
 import { makeSessions } from './auth/sessions';
 import { makeThrottle } from './auth/throttle';
 import { ConfigurationError, readConfig, type ServerConfig } from './config';
-import { makeNetworkReader } from './datasets/networkReader';
 import { UploadFolder } from './datasets/upload';
 import { DEMO_ACCOUNTS } from './demo/accounts';
 import { CONNECTION_LIMITS } from './http/connections';
+import { makeReader } from './reading/reader';
 import { makeRunRoutes } from './runs/routes';
 
 /** Milliseconds in which a server that was told to end must be gone. */
@@ -30,7 +30,7 @@ function listen(
     log.warn({ err: error }, 'listening connection lost'),
   );
   const throttle = makeThrottle(config.redisUrl, log);
-  const reader = makeNetworkReader({ script: config.parseThread, log });
+  const reader = makeReader({ script: config.readingScript, log });
   const uploads = new UploadFolder(config.uploadFolder);
   const app = createApp(
     {

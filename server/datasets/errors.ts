@@ -1,12 +1,9 @@
 import { UPLOAD_LIMITS } from '#contract/datasets';
-import type { Issue } from '#contract/problems';
 import { Failure } from '../http/failure';
-
-export type UploadedFile = 'nodes.csv' | 'edges.csv';
 
 const MEBIBYTE = 1024 * 1024;
 
-export function fileTooLarge(file: UploadedFile, limit: number): Failure {
+export function fileTooLarge(file: string, limit: number): Failure {
   const size =
     limit >= MEBIBYTE
       ? `${limit / MEBIBYTE} MiB (${limit.toLocaleString('en')} bytes)`
@@ -47,43 +44,6 @@ export function storageFull(cause: unknown): Failure {
     'uploads.storage_full',
     'The server has no room for the upload at the moment; nothing was saved. Try again later.',
     { cause, retryAfter: 60 },
-  );
-}
-
-export function wrongFiles(issues: readonly Issue[], issuesLeftOut: number): Failure {
-  const count = issues.length + issuesLeftOut;
-  return new Failure(
-    'invalid',
-    'datasets.wrong_files',
-    count === 1
-      ? 'The files have one fault; nothing was saved. Correct it, then send them again.'
-      : `The files have ${count} faults; nothing was saved. Correct them, then send them again.`,
-    { issues, issuesLeftOut },
-  );
-}
-
-export function readingTooSlow(seconds: number): Failure {
-  return new Failure(
-    'invalid',
-    'datasets.too_slow_to_read',
-    `Reading the files took longer than ${seconds} s and was stopped; send a smaller network.`,
-  );
-}
-
-export function readingTooLarge(megabytes: number): Failure {
-  return new Failure(
-    'too_large',
-    'datasets.too_large_to_read',
-    `Reading the files took more than ${megabytes} MB of memory and was stopped; send a smaller network.`,
-  );
-}
-
-export function tooManyReadings(): Failure {
-  return new Failure(
-    'unavailable',
-    'service.busy',
-    'Other uploads are being read at the moment; try again in a minute.',
-    { retryAfter: 60 },
   );
 }
 

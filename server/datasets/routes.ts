@@ -7,7 +7,9 @@ import { findRevision, listNodes } from '../../db/repositories/revisions';
 import type { Dependencies } from '../dependencies';
 import { notFound, parseBody } from '../http/parse';
 import { created, ok, route, SENT, type RouteMap } from '../http/route';
+import { networkFrom } from './readNetwork';
 import { presentDataset, presentRevision } from './presenter';
+import { bothFiles, TWO_FILES } from './twoFilesForm';
 import { createDataset, createRevision, datasetOf, datasetsOf } from './usecases';
 
 const oneDataset = z.strictObject({ workspaceId: z.uuid(), datasetId: z.uuid() });
@@ -28,9 +30,11 @@ export function datasetRoutes({ database: { db }, reader, uploads }: Dependencie
       ok(presentDataset(await datasetOf(db, member, params.datasetId))),
     ),
     createDataset: route('createDataset', { body: 'multipart' }, ({ member, request }) =>
-      uploads.receive(request, async (upload) => {
-        const fields = parseBody(createDatasetFields, upload.fields);
-        const id = await createDataset(db, member, fields, await reader.read(upload));
+      uploads.receive(request, TWO_FILES, async (received) => {
+        const files = bothFiles(received);
+        const fields = parseBody(createDatasetFields, received.fields);
+        const network = networkFrom(await reader.read(files));
+        const id = await createDataset(db, member, fields, network);
         return created(presentDataset(await datasetOf(db, member, id)));
       }),
     ),
@@ -39,9 +43,11 @@ export function datasetRoutes({ database: { db }, reader, uploads }: Dependencie
       { params: oneDataset, body: 'multipart' },
       async ({ member, params, request }) => {
         await datasetOf(db, member, params.datasetId);
-        return uploads.receive(request, async (upload) => {
-          parseBody(noFields, upload.fields);
-          await createRevision(db, member, params.datasetId, await reader.read(upload));
+        return uploads.receive(request, TWO_FILES, async (received) => {
+          const files = bothFiles(received);
+          parseBody(noFields, received.fields);
+          const network = networkFrom(await reader.read(files));
+          await createRevision(db, member, params.datasetId, network);
           return created(presentDataset(await datasetOf(db, member, params.datasetId)));
         });
       },

@@ -18,7 +18,7 @@ import {
 import type { Scope } from '../../db/repositories/scope';
 import { notFound } from '../http/parse';
 import { sameContent } from './errors';
-import type { ReadNetwork } from './readMessages';
+import type { ReadNetwork } from './readNetwork';
 
 export interface DatasetWithHistory {
   readonly dataset: DatasetRow;
@@ -62,12 +62,13 @@ function saveRevision(
   number: number,
   network: ReadNetwork,
 ): Promise<string> {
-  const { nodes, edges, contentHash, entryUnit, report } = network;
+  const { nodes, edges, weights, contentHash, entryUnit, report } = network;
   return insertRevision(transaction, scope, {
     datasetId,
     number,
     nodes,
     edges,
+    weights,
     contentHash,
     entryUnit,
     report,

@@ -12,14 +12,14 @@ import { createApp } from '../../server/app';
 import { makeSessions } from '../../server/auth/sessions';
 import { makeThrottle, THROTTLE_LIMITS, type ThrottleLimits } from '../../server/auth/throttle';
 import { readConfig } from '../../server/config';
-import { makeNetworkReader } from '../../server/datasets/networkReader';
 import { UploadFolder } from '../../server/datasets/upload';
 import { DEMO_ACCOUNTS } from '../../server/demo/accounts';
 import { CONNECTION_LIMITS } from '../../server/http/connections';
+import { makeReader } from '../../server/reading/reader';
 import { makeRunRoutes } from '../../server/runs/routes';
 import { Client } from './client';
 import { freshDatabase, type TestDatabase } from './database';
-import { buildParseThread } from './parseThread';
+import { buildReadingScript } from './readingScript';
 
 export interface TestApp {
   readonly origin: string;
@@ -47,7 +47,7 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
   const fresh = await freshDatabase();
   const url = options.reach?.(fresh.url) ?? fresh.url;
   const database: Database = options.reach === undefined ? fresh : openDatabase({ url });
-  const { script, remove } = await buildParseThread();
+  const { script, remove } = await buildReadingScript();
   const uploadFolder = await mkdtemp(join(tmpdir(), 'heddle-test-'));
   const config = readConfig({
     NODE_ENV: 'test',
@@ -61,7 +61,7 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
   const listener = openListener(url, () => undefined);
   const limits = { ...THROTTLE_LIMITS, ...options.limits };
   const throttle = makeThrottle(options.redisUrl ?? null, log, limits, `test-${randomUUID()}`);
-  const reader = makeNetworkReader({ script, log });
+  const reader = makeReader({ script, log });
   const app = createApp(
     {
       config,

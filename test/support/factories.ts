@@ -13,7 +13,7 @@ import { insertUser } from '../../db/repositories/users';
 import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
 import { pairDetails, revisionEstimates, runBlocks, runs } from '../../db/schema/index';
 import { createDataset } from '../../server/datasets/usecases';
-import type { ReadNetwork } from '../../server/datasets/readMessages';
+import type { ReadNetwork } from '../../server/datasets/readNetwork';
 import type { TestDatabase } from './database';
 
 type Db = TestDatabase['db'];

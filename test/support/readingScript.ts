@@ -5,14 +5,14 @@ import { build } from 'esbuild';
 
 const root = join(import.meta.dirname, '..', '..');
 
-/** Bundles the reading thread's script as it is now, as the build does. */
-export async function buildParseThread(): Promise<{ script: string; remove: () => void }> {
+/** Bundles the reading process's script as it is now, as the build does. */
+export async function buildReadingScript(): Promise<{ script: string; remove: () => void }> {
   const folder = join(root, 'node_modules', '.cache', `heddle-test-${randomUUID()}`);
   mkdirSync(folder, { recursive: true });
-  const script = join(folder, 'parseThread.mjs');
+  const script = join(folder, 'reading.mjs');
   await build({
     absWorkingDir: root,
-    entryPoints: ['server/datasets/parseThread.ts'],
+    entryPoints: ['server/reading/child.ts'],
     outfile: script,
     bundle: true,
     packages: 'external',
