@@ -6,7 +6,7 @@ export default defineConfig({
       {
         test: {
           name: 'unit',
-          include: ['test/{engine,contract,formats,house,src,published,queue}/**/*.test.ts'],
+          include: ['test/{engine,contract,formats,models,house,src,published,queue}/**/*.test.ts'],
           testTimeout: 120_000,
           sequence: { groupOrder: 0 },
         },

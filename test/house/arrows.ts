@@ -34,6 +34,8 @@ export const FOLDERS: readonly Folder[] = [
   },
   // Invented networks, as text: from seeds alone.
   { folder: 'db/seed', packages: ['pure-rand'], folders: [] },
+  // Invented networks of published models: from seeds alone.
+  { folder: 'models', packages: ['pure-rand'], folders: [] },
   {
     folder: 'jobs',
     packages: ['bullmq', 'ioredis', 'zod', 'pino', 'nodemailer', NODE],
@@ -53,7 +55,7 @@ export const FOLDERS: readonly Folder[] = [
       ],
       NODE,
     ],
-    folders: ['db', 'formats', 'jobs/queue'],
+    folders: ['db', 'formats', 'models', 'jobs/queue'],
   },
   {
     folder: 'src',

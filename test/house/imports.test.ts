@@ -5,7 +5,7 @@ import { z } from 'zod';
 import { adding, arrows, environment, markup, unpinned, type Rule } from './rules';
 import { ROOT, sourcesBelow } from './source';
 
-const sources = sourcesBelow(['src', 'server', 'db', 'jobs', 'formats']);
+const sources = sourcesBelow(['src', 'server', 'db', 'jobs', 'formats', 'models']);
 const broken = (rule: Rule): string[] => sources.flatMap(rule);
 const planted = (rule: Rule, path: string, text: string): string[] => rule({ path, text });
 
