@@ -26,30 +26,49 @@ export function paintSquare(
   const pen = sheet.getContext('2d');
   if (pen === null || n === 0) return;
   const image = pen.createImageData(n, n);
+  const knots: [row: number, column: number][] = [];
   const threads = [rgb(scene.inks.thread), rgb(weaveInk(scene.inks))] as const;
   for (let row = 0; row < n; row += 1) {
     for (let column = 0; column < n; column += 1) {
       const cell = cellOf(row, column);
       if (cell === null) continue;
+      if (cell.kind === LEFT_OUT) {
+        knots.push([row, column]);
+        continue;
+      }
       const at = 4 * (row * n + column);
       const thread = threads[(row + column) % 2 === 0 ? 0 : 1];
       const from = 3 * (cell.kind - 1);
       if (cell.kind > WOVEN) image.data.set(cell.paint.bytes.subarray(from, from + 3), at);
       else image.data.set([thread.r, thread.g, thread.b], at);
-      image.data[at + 3] = cell.kind >= WOVEN ? 255 : sparse(cell.kind, row, column);
+      image.data[at + 3] = cell.kind >= WOVEN ? 255 : (row + column) % 2 === 0 ? 110 : 0;
     }
   }
   pen.putImageData(image, 0, 0);
   context.imageSmoothingEnabled = false;
   context.drawImage(sheet, square.left, square.top, square.size, square.size);
+  tieKnots(context, square, knots, scene.inks);
   rule(context, square, scene.inks);
   if (square.named) nameSquare(context, square, scene.labels, scene.inks);
 }
 
-/** Opacity where nothing is computed: every other cell is pale while it is awaited, few where left out. */
-function sparse(kind: number, row: number, column: number): number {
-  if (kind === LEFT_OUT) return row % 3 === 0 && column % 3 === 0 ? 110 : 0;
-  return (row + column) % 2 === 0 ? 110 : 0;
+/** Least pixels between two knots. */
+const KNOTS_APART = 6;
+
+/** Of a cell that is left out a knot stays, as on the cloth; where cells are small, of some of them. */
+function tieKnots(
+  context: CanvasRenderingContext2D,
+  { left, top, cell }: SquareGeometry,
+  knots: readonly (readonly [row: number, column: number])[],
+  inks: Inks,
+): void {
+  const every = Math.max(1, Math.ceil(KNOTS_APART / cell));
+  context.fillStyle = inks.edge;
+  for (const [row, column] of knots) {
+    if (row % every !== 0 || column % every !== 0) continue;
+    const [x, y] = [left + (column + 0.5) * cell, top + (row + 0.5) * cell];
+    context.fillRect(x - 0.75, y - 0.75, 1.5, 1.5);
+  }
 }
 
 /** Gaps between the cells, and the frame. */

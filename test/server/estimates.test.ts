@@ -39,20 +39,22 @@ describe('what a run would need, before it is started', () => {
   async function visitorOf({ scope, revisionId }: Subject) {
     const { cookie } = await server.join(scope.workspaceId, 'analyst');
     const base = `${server.origin}/api/workspaces/${scope.workspaceId}`;
+    const startWith = (wanted: object, key: string = randomUUID()) =>
+      fetch(`${base}/runs`, {
+        method: 'POST',
+        headers: {
+          cookie,
+          origin: server.origin,
+          'content-type': 'application/json',
+          'idempotency-key': key,
+        },
+        body: JSON.stringify({ revisionId, ...wanted }),
+      });
     return {
       ask: (query: string, id = revisionId) =>
         fetch(`${base}/revisions/${id}/estimate${query}`, { headers: { cookie } }),
-      start: (dimensions: number[], key: string = randomUUID()) =>
-        fetch(`${base}/runs`, {
-          method: 'POST',
-          headers: {
-            cookie,
-            origin: server.origin,
-            'content-type': 'application/json',
-            'idempotency-key': key,
-          },
-          body: JSON.stringify({ revisionId, dimensions }),
-        }),
+      start: (dimensions: number[], key?: string) => startWith({ dimensions }, key),
+      startWith,
     };
   }
 
@@ -123,6 +125,41 @@ describe('what a run would need, before it is started', () => {
     expect((await start([0])).status).toBe(201);
     // Nobody has asked for this one: the engine’s own guard decides while it runs.
     expect((await start([2])).status).toBe(201);
+  });
+
+  test('over the time allowed names the ways that fit, and each of them may be started', async () => {
+    await workshop.endWorkers();
+    // 0.36 s of one thread.
+    workshop.startWorker({ HEDDLE_MAX_HOURS: '0.0001' });
+    const network = constantProbability(150, 0.3, 6);
+    const { ask, start, startWith } = await visitorOf(await workshop.bring(network));
+    const whole = runEstimate.parse(await (await ask('?maxDimension=3')).json());
+    expect(whole.refusal).toMatch(
+      /these 11,175 pairs would take about [\d.]+ s of one thread; 0\.36 s are allowed/,
+    );
+    const { ways } = whole;
+    expect(ways?.within ?? ways?.dimension).not.toBeNull();
+    expect((await start([3])).status).toBe(422);
+    if (ways?.within) {
+      const part = { kind: 'within', positions: ways.within };
+      expect(whole.refusal).toContain(`within k positions (up to ${ways.within} fit)`);
+      const query = `?maxDimension=3&part=${encodeURIComponent(JSON.stringify(part))}`;
+      const fitting = runEstimate.parse(await (await ask(query)).json());
+      expect([fitting.refusal, fitting.part]).toEqual([null, part]);
+      expect(fitting.pairs).toBeLessThan(whole.pairs);
+      expect([fitting.cliques, fitting.bytes]).toEqual([whole.cliques, whole.bytes]);
+      expect((await startWith({ dimensions: [3], part })).status).toBe(201);
+    }
+    if (ways?.dimension != null) {
+      const query = `?maxDimension=${ways.dimension}`;
+      expect(runEstimate.parse(await (await ask(query)).json()).refusal).toBeNull();
+      expect((await start([ways.dimension])).status).toBe(201);
+    }
+    expect(whole.refusal).toMatch(/higher weight threshold\)\.$/);
+    for (const wrong of ['x', '{}', '{"kind":"within","positions":0}', '[1]']) {
+      const answer = await ask(`?part=${encodeURIComponent(wrong)}`);
+      expect([wrong, answer.status]).toEqual([wrong, 400]);
+    }
   });
 
   test('found over the budget later does not refuse the repeat of a run that was started', async () => {

@@ -211,6 +211,40 @@ describe('a run of a part of the pairs', () => {
     expect(problem.issues?.[0]?.field).toMatch(/^part/);
   });
 
+  test('takes a focus from any member while it goes: a node, a pair or a window that is there', async () => {
+    await workshop.endWorkers();
+    const { subject, start } = await visit(network);
+    const { id } = await start({});
+    const { cookie } = await server.join(subject.scope.workspaceId, 'reviewer');
+    const put = (body: object) =>
+      fetch(`${server.origin}/api/workspaces/${subject.scope.workspaceId}/runs/${id}/focus`, {
+        method: 'PUT',
+        headers: { cookie, origin: server.origin, 'content-type': 'application/json' },
+        body: JSON.stringify(body),
+      });
+    const stored = async () =>
+      (await workshop.db.select().from(runs).where(eq(runs.id, id)))[0]?.focus;
+    const { values } = network;
+    const positions = Array.from(values.keys()).sort(
+      (a, b) => (values[a] ?? 0) - (values[b] ?? 0) || a - b,
+    );
+    expect((await put({ kind: 'node', row: 7 })).status).toBe(204);
+    expect(await stored()).toEqual({ kind: 'node', p: positions.indexOf(7) });
+    expect((await put({ kind: 'pair', a: 7, b: 2 })).status).toBe(204);
+    const [p, q] = [positions.indexOf(7), positions.indexOf(2)].sort((a, b) => a - b);
+    expect(await stored()).toEqual({ kind: 'pair', p, q });
+    expect((await put({ kind: 'window', from: 20, to: 900 })).status).toBe(204);
+    expect(await stored()).toEqual({ kind: 'window', from: 20, to: NODES - 1 });
+    for (const missing of [
+      { kind: 'node', row: NODES },
+      { kind: 'pair', a: 3, b: 3 },
+      { kind: 'window', from: 9, to: 4 },
+    ]) {
+      expect([missing, (await put(missing)).status]).toEqual([missing, 404]);
+    }
+    expect((await put({ kind: 'all' })).status).toBe(422);
+  });
+
   describe('asked for again', () => {
     test('is answered with the stored run, under way or done, whatever order a part is written in', async () => {
       await workshop.endWorkers();

@@ -36,6 +36,12 @@ function timeWords({ seconds, margin, startUp }: RunEstimate): string {
   return `about ${formatSpan(seconds)} of one thread (${range})`;
 }
 
+/** "about 12 min of one thread", "under 2 s of one thread". @param seconds at least 0 */
+export const aboutSpan = (seconds: number): string =>
+  seconds < SHORT
+    ? `under ${formatSpan(SHORT)} of one thread`
+    : `about ${formatSpan(seconds)} of one thread`;
+
 /** What a run would need, in one line. */
 export function estimateWords(estimate: RunEstimate): string {
   return [
