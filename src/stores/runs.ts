@@ -4,8 +4,10 @@ import type { RunBrief } from '#contract/datasets';
 import type { RunState } from '#contract/enums';
 import type { ProgressEvent } from '#contract/progress';
 import type { CreateRunRequest, RunEstimate, StartedRun } from '#contract/runs';
+import { getRevision } from '../api/datasets';
 import { followRun } from '../api/progress';
 import * as api from '../api/runs';
+import { filtrationOf } from '../graphs/filtration';
 
 /** What is known of a run while it is followed. */
 export interface RunProgress {
@@ -73,6 +75,13 @@ export const useRunsStore = defineStore('runs', () => {
   const estimate = (workspaceId: string, wanted: api.EstimateWanted): Promise<RunEstimate> =>
     api.getEstimate(workspaceId, wanted);
 
+  /** @returns the node row at every arrival position of a revision. */
+  async function arrivalOrder(workspaceId: string, revisionId: string): Promise<Uint32Array> {
+    const { nodes } = await getRevision(workspaceId, revisionId);
+    const entries = nodes.map(({ entry }) => entry);
+    return filtrationOf(entries, 'entry').order;
+  }
+
   async function stop(workspaceId: string, runId: string): Promise<void> {
     const run = await api.stopRun(workspaceId, runId);
     const known = progress.value[runId];
@@ -82,5 +91,5 @@ export const useRunsStore = defineStore('runs', () => {
   /** The latest known state of a run of a list. */
   const stateOf = (run: RunBrief): RunState => progress.value[run.id]?.state ?? run.state;
 
-  return { progress, found, follow, recall, start, estimate, stop, stateOf };
+  return { progress, found, follow, recall, start, estimate, arrivalOrder, stop, stateOf };
 });

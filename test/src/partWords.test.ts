@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { RunPart } from '#contract/enums';
-import { partWords, readWindows } from '../../src/components/run/partWords';
+import { partWords, readChosen, readWindows } from '../../src/components/run/partWords';
 import { focusOfView } from '../../src/composables/benchFocus';
 import { PLAIN_VIEW, readView } from '../../src/composables/benchQuery';
 
@@ -47,5 +47,27 @@ describe('what a reader looks at', () => {
     expect(view({ pair: '1-3', node: '4', face: 'node' })).toEqual({ kind: 'node', row: 2 });
     expect(view({ window: '2-4' })).toEqual({ kind: 'window', from: 1, to: 3 });
     expect(focusOfView(PLAIN_VIEW, order)).toBeNull();
+  });
+});
+
+describe('chosen pairs', () => {
+  const order = Uint32Array.of(3, 1, 0, 2);
+  const nothing = { windows: '', nodes: '', pairs: '' };
+  it('are written by arrivals and sent by windows of positions and by node rows', () => {
+    expect(readChosen({ windows: '1-2', nodes: '4 1', pairs: '3-4' }, order)).toEqual({
+      kind: 'chosen',
+      windows: [[0, 1]],
+      nodes: [2, 3],
+      pairs: [[0, 2]],
+    });
+  });
+  it.each([
+    [nothing, /at least one/],
+    [{ ...nothing, nodes: '5' }, /from 1 to 4/],
+    [{ ...nothing, nodes: 'x' }, /no arrival/],
+    [{ ...nothing, pairs: '2-9' }, /does not fit/],
+    [{ ...nothing, windows: Array.from({ length: 21 }, () => '1-2').join() }, /At most 20 windows/],
+  ])('%o is refused in a sentence', (written, sentence) => {
+    expect(readChosen(written, order)).toMatch(sentence);
   });
 });

@@ -1,4 +1,4 @@
-import type { RunPart } from '#contract/enums';
+import { CHOSEN_LIMITS, runPartSchema, type RunPart } from '#contract/enums';
 import { formatNoun } from '../../composables/localeFormat';
 
 /** Which pairs a run covers, e.g. "pairs within 5 positions". */
@@ -21,6 +21,44 @@ export function partWords(part: RunPart): string {
       return `chosen pairs (${words.join(', ')})`;
     }
   }
+}
+
+/** Arrivals as a person writes them, from 1. */
+export interface WrittenPairs {
+  /** "1-40, 100-120" */
+  readonly windows: string;
+  /** "5, 17" */
+  readonly nodes: string;
+  /** "3-19, 4-8" */
+  readonly pairs: string;
+}
+
+/**
+ * @param order node row at every arrival position
+ * @returns the part, or a sentence that says what is wrong
+ */
+export function readChosen(written: WrittenPairs, order: Uint32Array): RunPart | string {
+  const n = order.length;
+  const windows = written.windows.trim() === '' ? [] : readWindows(written.windows, n);
+  if (typeof windows === 'string') return windows;
+  const pairs = written.pairs.trim() === '' ? [] : readWindows(written.pairs, n);
+  if (typeof pairs === 'string') return pairs;
+  const nodes: number[] = [];
+  for (const piece of written.nodes.split(/[\s,;]+/).filter((one) => one !== '')) {
+    const arrival = Number(piece);
+    if (!Number.isInteger(arrival) || arrival < 1 || arrival > n) {
+      return `“${piece}” is no arrival; they count from 1 to ${n}.`;
+    }
+    nodes.push(order[arrival - 1] ?? 0);
+  }
+  if (windows.length + nodes.length + pairs.length === 0) {
+    return 'Write at least one window, node or pair.';
+  }
+  const rows = ([p, q]: [number, number]): [number, number] => [order[p] ?? 0, order[q] ?? 0];
+  const part = runPartSchema.safeParse({ kind: 'chosen', windows, nodes, pairs: pairs.map(rows) });
+  if (part.success) return part.data;
+  const { windows: w, nodes: v, pairs: e } = CHOSEN_LIMITS;
+  return `At most ${w} windows, ${v} nodes and ${e} pairs can be chosen; leave some out.`;
 }
 
 /**
