@@ -3,6 +3,7 @@ import pino, { type Logger } from 'pino';
 import { openDatabase, type Database } from '../db/client';
 import { openListener } from '../db/listener';
 import { secondsSinceBeat } from '../db/repositories/beats';
+import { deleteExpiredImports } from '../db/repositories/imports';
 import { createApp } from './app';
 import { makeSessions } from './auth/sessions';
 import { makeThrottle } from './auth/throttle';
@@ -47,7 +48,13 @@ function listen(
     makeRunRoutes(listener),
   );
   const sessions = makeSessions(database.db, config.secure);
+  const removeLeftDrafts = () => {
+    deleteExpiredImports(database.db).catch((error: unknown) =>
+      log.warn({ err: error }, 'drafts that were left were not removed'),
+    );
+  };
   const sweep = setInterval(() => {
+    removeLeftDrafts();
     sessions
       .sweep()
       .catch((error: unknown) => log.warn({ err: error }, 'ended sessions were not removed'));

@@ -5,6 +5,7 @@ import type { Dependencies } from './dependencies';
 import { groupRoutes } from './groups/routes';
 import { healthRoutes } from './health/routes';
 import type { RouteMap } from './http/route';
+import { importRoutes } from './imports/routes';
 import { memberRoutes } from './members/routes';
 import { workspaceRoutes } from './workspaces/routes';
 
@@ -37,6 +38,7 @@ export function makeRoutes(
     ...workspaceRoutes(dependencies),
     ...memberRoutes(dependencies),
     ...datasetRoutes(dependencies),
+    ...importRoutes(dependencies),
     ...groupRoutes(dependencies),
     ...runs,
   };

@@ -175,6 +175,19 @@ function isRevision(scope: Scope, revisionId: string) {
   return and(eq(revisions.workspaceId, scope.workspaceId), eq(revisions.id, revisionId));
 }
 
+/** @returns its number within the dataset, or null if the workspace has no such revision. */
+export async function findRevisionNumber(
+  db: Queryable,
+  scope: Scope,
+  revisionId: string,
+): Promise<number | null> {
+  const [row] = await db
+    .select({ number: revisions.number })
+    .from(revisions)
+    .where(isRevision(scope, revisionId));
+  return row?.number ?? null;
+}
+
 /** @returns how many nodes the revision has, or null if the workspace has no such revision. */
 export async function findRevisionSize(
   db: Queryable,

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { importChoices, importFound, SOURCE_FORMATS, textReading } from './importChoices';
 import { entryUnitSchema, runPartSchema, runStateSchema, scaleSchema } from './enums';
 
 export const UPLOAD_LIMITS = {
@@ -34,6 +35,21 @@ export const importReport = z.strictObject({
   components: z.number().int(),
   /** Columns that were read past, e.g. `nodes.csv: habitat`. */
   ignoredColumns: z.array(z.string()),
+  /** What was chosen and found where the network came by a guided import. */
+  imported: z
+    .strictObject({
+      files: z.array(
+        z.strictObject({
+          name: z.string(),
+          bytes: z.number().int(),
+          format: z.enum(SOURCE_FORMATS).nullable(),
+          reading: textReading.nullable(),
+        }),
+      ),
+      choices: importChoices,
+      found: importFound,
+    })
+    .optional(),
 });
 export type ImportReport = z.infer<typeof importReport>;
 

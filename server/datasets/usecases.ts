@@ -26,6 +26,12 @@ export interface DatasetWithHistory {
   readonly runs: readonly RunBriefRow[];
 }
 
+export interface SavedRevision {
+  readonly datasetId: string;
+  readonly revisionId: string;
+  readonly number: number;
+}
+
 /** Saves a network as a new dataset with revision 1: all of it or nothing. @returns its id */
 export async function createDataset(
   db: Db,
@@ -33,11 +39,21 @@ export async function createDataset(
   fields: CreateDatasetFields & { readonly invented?: boolean },
   network: ReadNetwork,
 ): Promise<string> {
-  return db.transaction(async (transaction) => {
-    const dataset = await insertDataset(transaction, scope, fields);
-    await saveRevision(transaction, scope, dataset.id, 1, network);
-    return dataset.id;
-  });
+  const made = await db.transaction((transaction) =>
+    addDataset(transaction, scope, fields, network),
+  );
+  return made.datasetId;
+}
+
+/** The same within a transaction that does more. */
+export async function addDataset(
+  transaction: Transaction,
+  scope: Scope,
+  fields: CreateDatasetFields & { readonly invented?: boolean },
+  network: ReadNetwork,
+): Promise<SavedRevision> {
+  const { id } = await insertDataset(transaction, scope, fields);
+  return saveRevision(transaction, scope, id, 1, network);
 }
 
 /** Saves a network as the next revision. @throws Failure `revisions.same_content` */
@@ -47,23 +63,31 @@ export async function createRevision(
   datasetId: string,
   network: ReadNetwork,
 ): Promise<void> {
-  await db.transaction(async (transaction) => {
-    if ((await lockDataset(transaction, scope, datasetId)) === null) throw notFound('datasets');
-    const latest = await findLatestRevision(transaction, scope, datasetId);
-    if (latest?.contentHash === network.contentHash) throw sameContent(latest.number);
-    await saveRevision(transaction, scope, datasetId, (latest?.number ?? 0) + 1, network);
-  });
+  await db.transaction((transaction) => addRevision(transaction, scope, datasetId, network));
 }
 
-function saveRevision(
+/** The same within a transaction that does more. */
+export async function addRevision(
+  transaction: Transaction,
+  scope: Scope,
+  datasetId: string,
+  network: ReadNetwork,
+): Promise<SavedRevision> {
+  if ((await lockDataset(transaction, scope, datasetId)) === null) throw notFound('datasets');
+  const latest = await findLatestRevision(transaction, scope, datasetId);
+  if (latest?.contentHash === network.contentHash) throw sameContent(latest.number);
+  return saveRevision(transaction, scope, datasetId, (latest?.number ?? 0) + 1, network);
+}
+
+async function saveRevision(
   transaction: Transaction,
   scope: Scope,
   datasetId: string,
   number: number,
   network: ReadNetwork,
-): Promise<string> {
+): Promise<SavedRevision> {
   const { nodes, edges, weights, contentHash, entryUnit, report } = network;
-  return insertRevision(transaction, scope, {
+  const revisionId = await insertRevision(transaction, scope, {
     datasetId,
     number,
     nodes,
@@ -73,6 +97,7 @@ function saveRevision(
     entryUnit,
     report,
   });
+  return { datasetId, revisionId, number };
 }
 
 export async function datasetsOf(db: Db, scope: Scope): Promise<DatasetWithHistory[]> {

@@ -8,6 +8,7 @@ const NOUN_OF_PARAMETER: Readonly<Record<string, string>> = {
   revisionId: 'revisions',
   runId: 'runs',
   groupId: 'groups',
+  importId: 'imports',
   userId: 'members',
   block: 'blocks',
   a: 'pairs',

@@ -1,9 +1,5 @@
-import { Readable } from 'node:stream';
-import { pipeline } from 'node:stream/promises';
-import type { Response } from 'express';
 import { z } from 'zod';
 import { createRunRequest, estimateQuery, runFocusRequest } from '#contract/runs';
-import { csvLines, type Cell } from '../../formats/csv';
 import { BARCODES_HEADER, PAIRS_HEADER, barcodesTable } from '../../formats/matrixTable';
 import { decodeBarcode } from '../../db/codecs/barcode';
 import type { Db } from '../../db/client';
@@ -12,9 +8,9 @@ import { listNodes } from '../../db/repositories/revisions';
 import { findBarcode } from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import type { Dependencies } from '../dependencies';
-import { nameDownload } from '../http/download';
 import { notFound } from '../http/parse';
 import { created, done, ok, route, SENT } from '../http/route';
+import { sendCsv } from '../http/sendCsv';
 import type { RunRoutes } from '../routes';
 import { notDone, notPlanned } from './errors';
 import { readEstimate } from './estimates';
@@ -139,17 +135,4 @@ async function readBarcode(db: Db, scope: Scope, runId: string) {
   if (stored === undefined) throw notFound('runs');
   if (stored === null) throw notPlanned();
   return decodeBarcode(stored);
-}
-
-async function sendCsv(
-  response: Response,
-  name: string,
-  header: readonly string[],
-  rows: AsyncIterable<readonly Cell[]> | Iterable<readonly Cell[]>,
-): Promise<typeof SENT> {
-  nameDownload(response, name, 'csv');
-  response.status(200).setHeader('Content-Type', 'text/csv; charset=utf-8');
-  response.setHeader('Cache-Control', 'no-store');
-  await pipeline(Readable.from(csvLines(header, rows)), response);
-  return SENT;
 }

@@ -7,12 +7,16 @@ import type { Answer, Asked, Client } from '../support/client';
 import {
   makeDataset,
   makeDoneRun,
+  EDGES_CSV,
+  importForm,
   makeGroup,
+  makeImport,
   makeMember,
   makePerson,
   makeQueuedRun,
   makeWorkspace,
   networkForm,
+  NODES_CSV,
   type MadeWorkspace,
 } from '../support/factories';
 
@@ -64,6 +68,7 @@ function samples(world: World): Record<RouteName, Sample> {
   const { db } = app;
   const { scope } = world.workspace;
   const run = () => Promise.resolve({ runId: world.runId });
+  const draft = async () => ({ importId: await makeImport(db, scope) });
   const member = async () => ({ userId: (await makeMember(db, scope, 'reviewer')).id });
   return {
     health: { status: 200 },
@@ -116,6 +121,25 @@ function samples(world: World): Record<RouteName, Sample> {
       parameters: async () => ({ datasetId: (await makeDataset(db, scope)).id }),
       send: () => ({ form: networkForm({ name: null }) }),
     },
+    imports: { status: 200 },
+    createImport: {
+      status: 201,
+      send: () => ({ form: importForm({ 'nodes.csv': NODES_CSV, 'edges.csv': EDGES_CSV }) }),
+    },
+    importDraft: { status: 200, parameters: draft },
+    changeImport: {
+      status: 200,
+      parameters: draft,
+      send: { method: 'PATCH', json: { name: 'Another name' } },
+    },
+    importProblems: { status: 200, parameters: draft },
+    importWeights: { status: 200, parameters: draft },
+    saveImport: {
+      status: 201,
+      parameters: draft,
+      send: { method: 'POST', json: { version: 1, name: 'Saved' } },
+    },
+    deleteImport: { status: 204, parameters: draft, send: { method: 'DELETE' } },
     revision: {
       status: 200,
       parameters: () => Promise.resolve({ revisionId: world.revisionId }),

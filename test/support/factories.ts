@@ -1,10 +1,15 @@
 import { randomUUID } from 'node:crypto';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { eq } from 'drizzle-orm';
 import { WHOLE, type Role } from '../../server/contract/enums';
 import { encodeBarcode } from '../../db/codecs/barcode';
 import { encodeBlockResult } from '../../db/codecs/blockResult';
 import { encodeUint32 } from '../../db/codecs/typedArrays';
 import { insertGroup } from '../../db/repositories/groups';
+import { insertImportFile } from '../../db/repositories/importFiles';
+import { insertImport, storeReading } from '../../db/repositories/imports';
 import { insertMember } from '../../db/repositories/memberships';
 import { listRevisions } from '../../db/repositories/revisions';
 import { createRun } from '../../db/repositories/runs';
@@ -14,6 +19,8 @@ import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
 import { pairDetails, revisionEstimates, runBlocks, runs } from '../../db/schema/index';
 import { createDataset } from '../../server/datasets/usecases';
 import type { ReadNetwork } from '../../server/datasets/readNetwork';
+import { readDraft } from '../../server/reading/draft';
+import type { DraftFile } from '../../server/reading/messages';
 import type { TestDatabase } from './database';
 
 type Db = TestDatabase['db'];
@@ -139,6 +146,31 @@ export async function makeDoneRun(db: Db, scope: Scope, revisionId: string): Pro
   return runId;
 }
 
+/** A draft that was read: the path of three, in one file of each kind. */
+export async function makeImport(db: Db, scope: Scope): Promise<string> {
+  const id = await insertImport(db, scope, { name: 'Path of three', datasetId: null });
+  const folder = mkdtempSync(join(tmpdir(), 'heddle-test-'));
+  try {
+    const files: DraftFile[] = [];
+    for (const [name, text] of [
+      ['nodes.csv', NODES_CSV],
+      ['edges.csv', EDGES_CSV],
+    ] as const) {
+      const file = { name, bytes: text.length, pasted: false };
+      const position = files.length;
+      await insertImportFile(db, scope, id, { ...file, position }, [Buffer.from(text)]);
+      const path = join(folder, name);
+      writeFileSync(path, text);
+      files.push({ ...file, path, hint: {} });
+    }
+    const { view, weights } = await readDraft({ folder, files, choices: null });
+    await storeReading(db, scope, id, { version: 1, view, weights });
+    return id;
+  } finally {
+    rmSync(folder, { recursive: true });
+  }
+}
+
 export function makeGroup(db: Db, scope: Scope, runId: string): Promise<string> {
   return insertGroup(db, scope, {
     runId,
@@ -170,3 +202,14 @@ export const EDGES_CSV = 'source,target\na,b\nb,c\n';
 
 const blobOf = (content: string | Blob): Blob =>
   typeof content === 'string' ? new Blob([content], { type: 'text/csv' }) : content;
+
+/** A form of an import; the values are the files by their names. */
+export function importForm(
+  files: Readonly<Record<string, string | Blob>>,
+  fields: Readonly<Record<string, string>> = {},
+): FormData {
+  const form = new FormData();
+  for (const [name, value] of Object.entries(fields)) form.set(name, value);
+  for (const [name, content] of Object.entries(files)) form.append('files', blobOf(content), name);
+  return form;
+}

@@ -1,0 +1,85 @@
+import { createReadStream } from 'node:fs';
+import { stat } from 'node:fs/promises';
+import { IMPORT_LIMITS } from '#contract/imports';
+import type { NewImportFile } from '../../db/repositories/importFiles';
+import type { FormRules, Received } from '../datasets/uploadForm';
+import { invalid } from '../http/parse';
+
+/** The form of an import: `files` under any names, and text. */
+export const IMPORT_FORM: FormRules = {
+  fileFields: ['files'],
+  files: IMPORT_LIMITS.files,
+  fileBytes: IMPORT_LIMITS.fileBytes,
+  fieldBytes: IMPORT_LIMITS.pastedBytes,
+  admit: (field, filename, before) => {
+    if (field !== 'files') {
+      return { refusal: 'A file under this name is not known; send all of them as `files`.' };
+    }
+    if (before.length >= IMPORT_LIMITS.files) {
+      return { refusal: `At most ${IMPORT_LIMITS.files} files make one import; send fewer.` };
+    }
+    return { label: cleanName(filename) || `File ${before.length + 1}` };
+  },
+};
+
+const PIECE = 1024 * 1024;
+const PASTED = 'Pasted text';
+/** Characters of a file's name that are kept. */
+const NAME = 120;
+
+export interface ReceivedSource extends NewImportFile {
+  readonly pieces: () => AsyncIterable<Uint8Array> | Iterable<Uint8Array>;
+}
+
+/** What is to be read, in the order sent, pasted text last; each has a name of its own. */
+export async function sourcesOf(
+  { files }: Received,
+  pasted: string | undefined,
+): Promise<ReceivedSource[]> {
+  const text = pasted === undefined ? null : Buffer.from(pasted);
+  const count = files.length + (text === null ? 0 : 1);
+  if (count === 0) {
+    throw invalid([{ field: 'files', message: 'Choose a file, or paste a table.' }]);
+  }
+  if (count > IMPORT_LIMITS.files) {
+    const message = `At most ${IMPORT_LIMITS.files} files make one import, pasted text among them.`;
+    throw invalid([{ field: 'files', message }]);
+  }
+  const names = new Set<string>();
+  const sources: ReceivedSource[] = [];
+  for (const [position, { filename, path }] of files.entries()) {
+    sources.push({
+      position,
+      name: ownName(cleanName(filename) || `File ${position + 1}`, names),
+      bytes: (await stat(path)).size,
+      pasted: false,
+      pieces: () => createReadStream(path, { highWaterMark: PIECE }),
+    });
+  }
+  if (text !== null) {
+    const [position, name] = [files.length, ownName(PASTED, names)];
+    sources.push({ position, name, bytes: text.length, pasted: true, pieces: () => cut(text) });
+  }
+  return sources;
+}
+
+function* cut(text: Buffer): Generator<Uint8Array> {
+  for (let from = 0; from < text.length; from += PIECE) yield text.subarray(from, from + PIECE);
+}
+
+/** A name as somebody sent it, without folders, control characters and half characters. */
+function cleanName(filename: string): string {
+  const base = filename.split(/[/\\]/).at(-1) ?? '';
+  const clean = base
+    .replace(/[\p{Cc}\p{Cf}\p{Surrogate}]/gu, ' ')
+    .replace(/\s+/g, ' ')
+    .trim();
+  return [...clean].slice(0, NAME).join('').trim();
+}
+
+function ownName(name: string, taken: Set<string>): string {
+  let own = name;
+  for (let copy = 2; taken.has(own); copy++) own = `${name} (${copy})`;
+  taken.add(own);
+  return own;
+}
