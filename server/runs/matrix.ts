@@ -64,7 +64,9 @@ export async function* matrixRows(
     const found: { q: number; block: LoadedBlock; at: number }[] = [];
     for (const { block, offset, partners } of list) {
       const loaded = await load(block);
-      (partners ?? laterThan(p, matrix.nodeCount)).forEach((q, i) => found.push({ q, block: loaded, at: offset + i }));
+      (partners ?? laterThan(p, matrix.nodeCount)).forEach((q, i) =>
+        found.push({ q, block: loaded, at: offset + i }),
+      );
     }
     // A run that was extended has a row in two blocks.
     if (list.length > 1) found.sort((one, other) => one.q - other.q);
