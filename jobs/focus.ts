@@ -1,5 +1,5 @@
 import type { BlockPairs } from '../db/codecs/blockPairs';
-import type { RunFocus } from '../db/repositories/runs';
+import type { RunFocus } from '../db/repositories/runOrders';
 
 /** A block that is planned but not computed. */
 export interface WaitingBlock extends BlockPairs {

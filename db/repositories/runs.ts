@@ -1,12 +1,11 @@
-import { and, desc, eq, inArray, ne, or, sql } from 'drizzle-orm';
-import { WHOLE, type RunFocus, type RunPart, type Scale } from '#contract/enums';
+import { and, desc, eq, inArray, or, sql } from 'drizzle-orm';
+import type { RunPart, Scale } from '#contract/enums';
 import type { Db, Queryable } from '../client';
 import { beats, datasets, revisions, runs, users } from '../schema/index';
 import { addToOutbox } from './outbox';
 import { partKey } from './runParts';
 import type { Scope } from './scope';
 
-export type { RunFocus };
 export type RunRow = typeof runs.$inferSelect;
 
 /** A run with what its page says about the network it was made from. */
@@ -274,91 +273,5 @@ export async function stopRun(db: Db, scope: Scope, runId: string): Promise<bool
       .returning({ id: runs.id });
     if (stopped.length > 0) await announceRun(tx, runId);
     return stopped.length > 0;
-  });
-}
-
-/**
- * Makes a finished part run whole: what is stored stays, and a plan of the other pairs is asked for.
- * An extension that was stopped or failed is taken up again where it was.
- *
- * @returns whether this call did
- */
-export async function extendRun(db: Db, scope: Scope, runId: string): Promise<boolean> {
-  return db.transaction(async (tx) => {
-    const mine = and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId));
-    const again = {
-      state: 'queued' as const,
-      attempt: sql`${runs.attempt} + 1`,
-      dispatchId: sql`gen_random_uuid()`,
-      dispatchedAt: sql`now()`,
-      heartbeatAt: null,
-      startedAt: null,
-      finishedAt: null,
-      failureCode: null,
-      failureMessage: null,
-    };
-    const [extended] = await tx
-      .update(runs)
-      .set({
-        ...again,
-        extendedFrom: runs.part,
-        part: WHOLE,
-        blocksBefore: runs.blocksDone,
-        pairsBefore: runs.pairsDone,
-        blockCount: null,
-        pairsTotal: sql`(select node_count * (node_count - 1) / 2 from revisions
-          where revisions.id = ${runs.revisionId})`,
-      })
-      .where(and(mine, eq(runs.state, 'done'), ne(runs.part, WHOLE)))
-      .returning();
-    const [resumed] = extended
-      ? []
-      : await tx
-          .update(runs)
-          .set(again)
-          .where(
-            and(
-              mine,
-              inArray(runs.state, ['stopped', 'failed']),
-              sql`${runs.extendedFrom} is not null`,
-            ),
-          )
-          .returning();
-    const run = extended ?? resumed;
-    if (!run) return false;
-    const kind = run.blockCount === null ? 'plan' : 'blocks';
-    const payload = { runId, attempt: run.attempt };
-    await addToOutbox(tx, scope.workspaceId, { kind, payload }, run.dispatchId);
-    await announceRun(tx, runId);
-    return true;
-  });
-}
-
-/**
- * Stores what a reader looks at and asks that its pairs go first.
- * @returns false if the run is over or not there
- */
-export async function setFocus(
-  db: Db,
-  scope: Scope,
-  runId: string,
-  focus: RunFocus,
-): Promise<boolean> {
-  return db.transaction(async (tx) => {
-    const [run] = await tx
-      .update(runs)
-      .set({ focus })
-      .where(
-        and(
-          eq(runs.workspaceId, scope.workspaceId),
-          eq(runs.id, runId),
-          inArray(runs.state, ['queued', 'running']),
-        ),
-      )
-      .returning({ attempt: runs.attempt });
-    if (!run) return false;
-    const payload = { runId, attempt: run.attempt };
-    await addToOutbox(tx, scope.workspaceId, { kind: 'focus', payload });
-    return true;
   });
 }

@@ -3,13 +3,12 @@ import { WHOLE } from '#contract/enums';
 import type { createRunRequest, Run, runFocusRequest, StartedRun } from '#contract/runs';
 import type { Db } from '../../db/client';
 import { findRevisionSize, listNodes } from '../../db/repositories/revisions';
+import { extendRun, setFocus } from '../../db/repositories/runOrders';
 import { listLanded } from '../../db/repositories/runBlocks';
 import {
   createRun,
-  extendRun,
   findRun,
   hasRunUnderKey,
-  setFocus,
   stopRun,
   type RunView,
 } from '../../db/repositories/runs';

@@ -1,7 +1,7 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { decodeBlockPairs } from '../../db/codecs/blockPairs';
-import { setFocus } from '../../db/repositories/runs';
+import { setFocus } from '../../db/repositories/runOrders';
 import { outbox, runBlocks } from '../../db/schema/index';
 import { blocksInFocus, type WaitingBlock } from '../../jobs/focus';
 import type { Network } from '../../jobs/engine/types';
