@@ -18,7 +18,7 @@ export function uploadTooLarge(): Failure {
   return new Failure(
     'too_large',
     'uploads.too_large',
-    `The upload is larger than two files of ${UPLOAD_LIMITS.fileBytes / MEBIBYTE} MiB may be; send nodes.csv and edges.csv only.`,
+    `The upload is larger than its files may be, ${UPLOAD_LIMITS.fileBytes / MEBIBYTE} MiB each; send fewer or smaller files.`,
   );
 }
 
@@ -26,7 +26,7 @@ export function uploadMalformed(): Failure {
   return new Failure(
     'malformed',
     'uploads.malformed',
-    'The form is not a whole multipart/form-data message; send the two files again.',
+    'The form is not a whole multipart/form-data message; send the files again.',
   );
 }
 

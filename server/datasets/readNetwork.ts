@@ -2,7 +2,7 @@ import type { ImportReport } from '#contract/datasets';
 import type { EntryUnit } from '#contract/enums';
 import type { NewNode } from '../../db/repositories/revisions';
 import type { EncodedPieces } from '../../db/repositories/stagedPieces';
-import { piecesOf } from '../reading/arrayFiles';
+import { piecesOf } from './arrayPieces';
 import type { NetworkOnDisk } from '../reading/messages';
 
 /** A network that is right in every row. */

@@ -40,8 +40,9 @@ export class Uploading {
     pieces: readonly Buffer[],
     headers: Readonly<Record<string, string>>,
     end: 'end' | 'abort' = 'end',
+    path = this.path,
   ): Promise<RawAnswer | null> {
-    const request = openRequest(`${this.app.origin}${this.path}`, {
+    const request = openRequest(`${this.app.origin}${path}`, {
       method: 'POST',
       headers: { cookie: this.owner.cookie, origin: this.app.origin, ...headers },
     });
