@@ -55,6 +55,24 @@ export const routes: RouteRecordRaw[] = [
         component: () => import('../pages/DatasetUploadPage.vue'),
       },
       {
+        path: 'workspaces/:workspaceId/imports/new',
+        name: 'import-new',
+        props: true,
+        component: () => import('../pages/ImportBeginPage.vue'),
+      },
+      {
+        path: 'workspaces/:workspaceId/datasets/:datasetId/imports/new',
+        name: 'import-revision',
+        props: true,
+        component: () => import('../pages/ImportBeginPage.vue'),
+      },
+      {
+        path: 'workspaces/:workspaceId/imports/:importId/:step',
+        name: 'import',
+        props: true,
+        component: () => import('../pages/ImportPage.vue'),
+      },
+      {
         path: 'workspaces/:workspaceId/runs/:runId',
         name: 'run',
         props: true,
