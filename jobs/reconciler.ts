@@ -1,4 +1,5 @@
 import type { Db } from '../db/client';
+import { redispatchImportEstimates } from '../db/repositories/importEstimates';
 import { redispatchMails } from '../db/repositories/mails';
 import { askForBeat } from '../db/repositories/outbox';
 import { redispatchPairs } from '../db/repositories/pairDetails';
@@ -59,6 +60,7 @@ export class Reconciler {
     await askForBeat(this.db, BEAT);
     await redispatchPairs(this.db, PAIR_LATE);
     await redispatchEstimates(this.db, PAIR_LATE);
+    await redispatchImportEstimates(this.db, PAIR_LATE);
     await redispatchMails(this.db, MAIL_LATE);
     for (const run of await listSilent(this.db, SILENCE)) {
       if (await this.#isLost(run)) await tryAgain(this.db, run, this.mail);

@@ -84,6 +84,10 @@ export class Relay {
         const estimate = PAYLOADS.estimate.parse(raw);
         return this.producer.add({ name: 'estimate', id: dispatchId, payload: estimate });
       }
+      case 'import_estimate': {
+        const payload = PAYLOADS.importEstimate.parse(raw);
+        return this.producer.add({ name: 'importEstimate', id: dispatchId, payload });
+      }
       case 'mail': {
         const mail = PAYLOADS.mail.parse(raw);
         return this.producer.add({ name: 'mail', id: dispatchId, payload: mail });

@@ -12,6 +12,7 @@ import { ENGINE_VERSION } from './engine/index';
 import { block, finish } from './handlers/block';
 import type { Context } from './handlers/context';
 import { estimate } from './handlers/estimate';
+import { importEstimate } from './handlers/importEstimate';
 import { mail, mailRule } from './handlers/mail';
 import { pair } from './handlers/pair';
 import { plan } from './handlers/plan';
@@ -40,6 +41,7 @@ const handlersOf = (context: Context): Handlers => ({
   finish: (payload) => finish(payload, context),
   pair: (payload) => pair(payload, context),
   estimate: (payload) => estimate(payload, context),
+  importEstimate: (payload) => importEstimate(payload, context),
   mail: (payload) => mail(payload, context),
   beat: () => beat(context.db, ENGINE_VERSION),
 });

@@ -14,6 +14,10 @@ export type OutboxEntry =
       readonly kind: 'estimate';
       readonly payload: { revisionId: string; maxDimension: number; partKey: string };
     }
+  | {
+      readonly kind: 'import_estimate';
+      readonly payload: { importId: string; version: number };
+    }
   | { readonly kind: 'mail'; readonly payload: { mailId: string } }
   | { readonly kind: 'beat'; readonly payload: Record<string, never> };
 

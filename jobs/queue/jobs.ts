@@ -24,6 +24,12 @@ export const PAYLOADS = {
     /** Names the part; jobs of before parts had none. */
     partKey: z.string().max(100).default('whole'),
   }),
+  /** Count what the matrix of a draft would need. */
+  importEstimate: z.strictObject({
+    v: version,
+    importId: id,
+    version: z.number().int().positive(),
+  }),
   /** Send one message. */
   mail: z.strictObject({ v: version, mailId: id }),
   /** Show that jobs are consumed. */
@@ -48,6 +54,7 @@ export const QUEUE_OF = {
   block: 'blocks',
   pair: 'pairs',
   estimate: 'pairs',
+  importEstimate: 'pairs',
   mail: 'notes',
   beat: 'notes',
 } as const satisfies Record<JobName, QueueName>;

@@ -1,4 +1,5 @@
 import {
+  importEstimate,
   importWeights,
   type ImportDraft,
   type ImportEstimate,
@@ -6,10 +7,13 @@ import {
   type ImportWeights,
 } from '#contract/imports';
 import type { Cell } from '../../formats/csv';
+import type { findImportEstimate } from '../../db/repositories/importEstimates';
 import type { ImportHead, ImportRow } from '../../db/repositories/imports';
 import { draftView } from '../reading/draftView';
 import type { Problems } from '../reading/messages';
 import type { ImportWithFiles } from './usecases';
+
+type StoredEstimate = Awaited<ReturnType<typeof findImportEstimate>>;
 
 const presentHead = ({ createdAt, updatedAt, expiresAt, ...head }: ImportHead) => ({
   id: head.id,
@@ -33,14 +37,25 @@ export const presentImports = (drafts: readonly ImportWithFiles[]): ImportList =
 /** The signature is for the memory of columns, not for people. */
 const shownView = draftView.strip().omit({ signature: true });
 
-export function presentImport(row: ImportRow, estimate: ImportEstimate): ImportDraft {
+const storedEstimate = importEstimate.options[3].omit({ state: true });
+
+function presentEstimate(stored: StoredEstimate): ImportEstimate {
+  if (stored === null) return { state: 'none' };
+  const { estimate, failure } = stored;
+  if (failure !== null) return { state: 'failed', message: failure };
+  if (estimate === null) return { state: 'waiting' };
+  return { state: 'ready', ...storedEstimate.parse(estimate) };
+}
+
+/** @param stored what a worker said, or that it is asked */
+export function presentImport(row: ImportRow, stored: StoredEstimate): ImportDraft {
   const view = shownView.parse(row.view);
   const { datasetId, revisionId } = row;
   return {
     ...presentHead(row),
     version: row.version,
     ...view,
-    estimate,
+    estimate: presentEstimate(stored),
     saved: datasetId !== null && revisionId !== null ? { datasetId, revisionId } : null,
   };
 }

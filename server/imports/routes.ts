@@ -1,5 +1,8 @@
 import { z } from 'zod';
 import { changeImportRequest, saveImportRequest } from '#contract/imports';
+import { findImportEstimate } from '../../db/repositories/importEstimates';
+import type { ImportRow } from '../../db/repositories/imports';
+import type { Scope } from '../../db/repositories/scope';
 import type { Dependencies } from '../dependencies';
 import { created, done, ok, route, type RouteMap } from '../http/route';
 import { sendCsv } from '../http/sendCsv';
@@ -31,25 +34,25 @@ type ImportRoutes = Pick<
 export function importRoutes({ database: { db }, uploads, reader }: Dependencies): ImportRoutes {
   const tools = { db, uploads, reader };
   const one = { params: oneImport };
+  const shown = async (scope: Scope, row: ImportRow) =>
+    presentImport(row, await findImportEstimate(db, scope, row.id));
   return {
     imports: route('imports', {}, async ({ member }) =>
       ok(presentImports(await importsOf(tools, member))),
     ),
     createImport: route('createImport', { body: 'multipart' }, ({ member, request }) =>
       uploads.receive(request, IMPORT_FORM, async (received) =>
-        created(presentImport(await createImport(tools, member, received), { state: 'none' })),
+        created(await shown(member, await createImport(tools, member, received))),
       ),
     ),
     importDraft: route('importDraft', one, async ({ member, params }) =>
-      ok(presentImport(await importOf(tools, member, params.importId), { state: 'none' })),
+      ok(await shown(member, await importOf(tools, member, params.importId))),
     ),
     changeImport: route(
       'changeImport',
       { ...one, body: changeImportRequest },
       async ({ member, params, body }) =>
-        ok(
-          presentImport(await changeDraft(tools, member, params.importId, body), { state: 'none' }),
-        ),
+        ok(await shown(member, await changeDraft(tools, member, params.importId, body))),
     ),
     importProblems: route('importProblems', one, async ({ member, params, response }) => {
       const { row, problems } = await problemsOf(tools, member, params.importId);

@@ -3,6 +3,7 @@ import type { saveImportRequest, SavedImport } from '#contract/imports';
 import type { z } from 'zod';
 import type { Transaction } from '../../db/client';
 import { remember } from '../../db/repositories/columnMemory';
+import { dropImportEstimate } from '../../db/repositories/importEstimates';
 import { lockImport, markSaved, type ImportRow } from '../../db/repositories/imports';
 import { findRevisionNumber } from '../../db/repositories/revisions';
 import type { Scope } from '../../db/repositories/scope';
@@ -63,6 +64,7 @@ async function saveOnce(
       ? await addDataset(transaction, scope, named(wanted), network)
       : await addRevision(transaction, scope, wanted.datasetId, network);
   await markSaved(transaction, scope, row.id, saved);
+  await dropImportEstimate(transaction, scope, row.id);
   if (view.signature !== null) await remember(transaction, scope, view.signature, view.choices);
   return saved;
 }

@@ -1,5 +1,7 @@
 import { createImportFields, type ChangeImportRequest } from '#contract/imports';
+import type { Db } from '../../db/client';
 import { findDataset } from '../../db/repositories/datasets';
+import { askImportEstimate, dropImportEstimate } from '../../db/repositories/importEstimates';
 import {
   changeHint,
   insertImportFile,
@@ -18,10 +20,11 @@ import {
   type ImportRow,
 } from '../../db/repositories/imports';
 import type { Scope } from '../../db/repositories/scope';
+import { piecesOf } from '../datasets/arrayPieces';
 import type { Received } from '../datasets/uploadForm';
 import { invalid, notFound, parseBody } from '../http/parse';
 import { draftView } from '../reading/draftView';
-import type { Problems } from '../reading/messages';
+import type { Problems, ReadDraft } from '../reading/messages';
 import { alreadySaved, importChanged, tooManyImports } from './errors';
 import { readByMemory, withFiles, type ImportTools } from './reading';
 import { sourcesOf } from './receive';
@@ -91,12 +94,27 @@ export async function importOf(
   const row = await requireImport(tools, scope, importId);
   if (row.readVersion === row.version) return row;
   await withFiles(tools, scope, row, async (request) => {
-    const { view, weights } = await readByMemory(tools, scope, request);
-    await storeReading(tools.db, scope, importId, { version: row.version, view, weights });
+    await keep(tools.db, scope, row, await readByMemory(tools, scope, request));
   });
   const read = await requireImport(tools, scope, importId);
   if (read.readVersion !== read.version) throw importChanged();
   return read;
+}
+
+/** Stores what was read, and asks a worker about the network; nothing of it where the draft changed. */
+async function keep(
+  db: Db,
+  scope: Scope,
+  { id, version }: ImportRow,
+  { view, weights, growth }: ReadDraft,
+): Promise<void> {
+  await db.transaction(async (transaction) => {
+    const reading = { version, view, weights };
+    if (!(await storeReading(transaction, scope, id, reading))) return;
+    if (growth === null) return dropImportEstimate(transaction, scope, id);
+    const arrays = { entries: piecesOf(growth.entries), edges: piecesOf(growth.edges) };
+    await askImportEstimate(transaction, scope, { importId: id, version }, arrays);
+  });
 }
 
 async function requireImport(
