@@ -29,7 +29,7 @@ test('from an empty instance to a downloaded matrix', async ({
   });
 
   await test.step('two files become a dataset, and what was folded is said', async () => {
-    await workspacePage.bringIn.click();
+    await workspacePage.twoFiles.click();
     await uploadPage.name.fill('Posts and ropes');
     await uploadPage.choose(NODES_CSV, EDGES_CSV);
     await uploadPage.submit.click();

@@ -3,6 +3,7 @@ import { House } from './house';
 import { BandPart } from './pages/BandPart';
 import { BenchPage } from './pages/BenchPage';
 import { DatasetPage } from './pages/DatasetPage';
+import { ImportPage } from './pages/ImportPage';
 import { SignInPage } from './pages/SignInPage';
 import { SignUpPage } from './pages/SignUpPage';
 import { UploadPage } from './pages/UploadPage';
@@ -16,6 +17,7 @@ interface Fixtures {
   uploadPage: UploadPage;
   datasetPage: DatasetPage;
   benchPage: BenchPage;
+  importPage: ImportPage;
   /** Another browser-less session, for preparing what the test does not show. */
   house: House;
   /** One more session, of somebody else. */
@@ -45,6 +47,7 @@ export const test = base.extend<Fixtures>({
   uploadPage: async ({ page }, use) => use(new UploadPage(page)),
   datasetPage: async ({ page }, use) => use(new DatasetPage(page)),
   benchPage: async ({ page }, use) => use(new BenchPage(page)),
+  importPage: async ({ page }, use) => use(new ImportPage(page)),
   house: async ({ playwright, baseURL }, use) => withHouse(playwright, baseURL, use),
   otherHouse: async ({ playwright, baseURL }, use) => withHouse(playwright, baseURL, use),
   quietPage: [

@@ -1,15 +1,6 @@
-import type { Locator, Page } from '@playwright/test';
 import { expect, test } from './fixtures';
 import { newAccount } from './house';
-
-/** Presses Tab until `target` has the focus. @throws if it is not met within `most` steps. */
-async function tabTo(page: Page, target: Locator, most = 60): Promise<void> {
-  for (let step = 0; step < most; step++) {
-    if (await target.evaluate((element) => element === document.activeElement)) return;
-    await page.keyboard.press('Tab');
-  }
-  throw new Error(`The Tab key does not reach ${String(target)} within ${most} steps.`);
-}
+import { tabTo } from './tabTo';
 
 test('signing in and starting a run need no mouse', async ({
   page,

@@ -20,7 +20,7 @@ test('a reviewer reads a dataset but cannot start a run, and is told why', async
   await signInPage.open(`/workspaces/${id}`);
   await signInPage.signIn(reviewer);
   await expect(workspacePage.title('Reviewed networks')).toBeVisible();
-  await expect(workspacePage.bringIn).toHaveCount(0);
+  await expect(workspacePage.twoFiles).toHaveCount(0);
 
   await datasetPage.open(id, dataset.id);
   await expect(datasetPage.start).toHaveCount(0);

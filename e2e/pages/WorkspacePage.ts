@@ -3,8 +3,19 @@ import type { Locator, Page } from '@playwright/test';
 export class WorkspacePage {
   constructor(private readonly page: Page) {}
 
+  /** Begins a guided import. */
   get bringIn(): Locator {
     return this.page.getByRole('link', { name: 'Bring a network in' });
+  }
+
+  /** The short way for two files that are as the samples. */
+  get twoFiles(): Locator {
+    return this.page.getByRole('link', { name: 'Two files at once' });
+  }
+
+  /** An import that was begun. */
+  begun(name: string): Locator {
+    return this.page.getByRole('region', { name: 'Imports begun' }).getByRole('link', { name });
   }
 
   get members(): Locator {
