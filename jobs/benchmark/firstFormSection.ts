@@ -7,7 +7,7 @@ import { seconds, times } from './figures';
 import { benchGraphs } from './graphs';
 import { pairsOf } from './matrixSection';
 import type { Options } from './options';
-import { freshSubject, LIMITS, poolOf, someRows, warmUp } from './poolRuns';
+import { freshSubject, LIMITS, poolOf, someRows, warmUpRows } from './poolRuns';
 
 const QUIET: Control = { shouldStop: () => false, onProgress: () => undefined };
 /** Where nothing else is chosen. */
@@ -81,7 +81,7 @@ async function compareOn(name: string, network: Network, options: Options): Prom
   const { dimension } = options;
   const cost = rowSeconds(prepare(network, dimension, LIMITS, QUIET).counts);
   const pools = [poolOf(THREADS, 'firstForm'), poolOf(THREADS)] as const;
-  await warmUp(pools[1]);
+  for (const pool of pools) await warmUpRows(pool);
   const slow = await contender(pools[0], network, dimension);
   const fast = await contender(pools[1], network, dimension);
   let sample = sampleRows(cost, options['first-form-rows']);

@@ -7,13 +7,14 @@ import { ENGINE_VERSION } from '../engine/index';
 import { firstFormSection } from './firstFormSection';
 import { growthSection } from './growthSection';
 import { matrixSection } from './matrixSection';
+import { productSection } from './productSection';
 import { readOptions, type Options, type Section } from './options';
 
 const RUN: Record<Section, (options: Options) => Promise<void>> = {
   matrix: matrixSection,
   'first-form': firstFormSection,
   growth: growthSection,
-  product: () => Promise.reject(new Error('not yet')),
+  product: productSection,
 };
 
 async function main(): Promise<void> {

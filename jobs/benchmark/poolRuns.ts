@@ -68,10 +68,19 @@ export async function someRows(pool: Pool, subject: Subject, rows: Uint32Array):
   return secondsSince(start);
 }
 
-/** Lets all threads of the engine compile their code on a small matrix. */
+const warmUpNetwork = (seed: number): Network => constantProbability(60, 0.4, 100 + seed);
+
+/** Lets all threads of the engine compile their code on small matrices. */
 export async function warmUp(pool: Pool): Promise<void> {
+  for (let seed = 0; seed < 3; seed++) await wholeMatrix(pool, warmUpNetwork(seed), 3);
+}
+
+/** The same for threads that know rows only. */
+export async function warmUpRows(pool: Pool): Promise<void> {
   for (let seed = 0; seed < 3; seed++) {
-    await wholeMatrix(pool, constantProbability(60, 0.4, 100 + seed), 3);
+    const network = warmUpNetwork(seed);
+    const rows = Uint32Array.from({ length: network.nodeCount - 1 }, (_, p) => p);
+    await someRows(pool, freshSubject(network, 3), rows);
   }
 }
 

@@ -41,6 +41,12 @@ export const FOLDERS: readonly Folder[] = [
     packages: ['bullmq', 'ioredis', 'zod', 'pino', 'nodemailer', NODE],
     folders: ['db', 'formats'],
   },
+  // Measures the whole product from outside, so it speaks the contract like the pages do.
+  {
+    folder: 'jobs/benchmark',
+    packages: ['zod', '@playwright/test', NODE],
+    folders: ['jobs', 'db', 'server/contract'],
+  },
   {
     folder: 'server',
     packages: [
