@@ -1,10 +1,12 @@
 import { select } from 'd3';
 import type { ImportGrowth } from '#contract/imports';
-import { growthGeometry } from './growthGeometry';
+import { growthGeometry, type BettiSteps, type GrowthGeometry } from './growthGeometry';
 import type { Inks } from './inks';
 
 export interface GrowthScene {
   readonly growth: ImportGrowth;
+  /** Empty until they are computed. */
+  readonly betti: BettiSteps;
   readonly width: number;
   readonly inks: Inks;
   /** Arrival that the cursor is on, null for none. */
@@ -25,9 +27,10 @@ export function drawGrowth(element: HTMLElement): GrowthDrawing {
 
   return {
     update(scene) {
-      const { growth, width, inks, cursor } = scene;
-      const geometry = growthGeometry(growth, width);
-      if (drawn?.growth !== growth || drawn.width !== width || drawn.inks !== inks) {
+      const { growth, betti, width, inks, cursor } = scene;
+      const geometry = growthGeometry(growth, width, betti);
+      const same = drawn?.growth === growth && drawn.betti === betti;
+      if (!same || drawn?.width !== width || drawn.inks !== inks) {
         svg
           .attr('width', width)
           .attr('height', geometry.height)
@@ -52,7 +55,7 @@ export function drawGrowth(element: HTMLElement): GrowthDrawing {
 
 function drawBody(
   node: SVGGElement | null,
-  geometry: ReturnType<typeof growthGeometry>,
+  geometry: GrowthGeometry,
   growth: ImportGrowth,
   inks: Inks,
 ): void {
@@ -70,14 +73,20 @@ function drawBody(
   );
   path(curve, inks.woad, 1.5);
   path(Array.from(x, (at) => `M${at} ${base}v7`).join(''), inks.ink, 1);
-  const write = (text: string, at: number, anchor: string) =>
+  const write = (text: string, at: number, y: number, anchor: string) =>
     g
       .append('text')
       .attr('x', at)
-      .attr('y', top - 10)
+      .attr('y', y)
       .attr('text-anchor', anchor)
       .attr('fill', inks.quiet)
       .text(text);
-  write('edges that are there', left, 'start');
-  write(`${growth.edgesBy.at(-1) ?? 0} in the end`, right, 'end');
+  write('edges that are there', left, top - 10, 'start');
+  write(`${growth.edgesBy.at(-1) ?? 0} in the end`, right, top - 10, 'end');
+  for (const band of geometry.betti) {
+    path(band.path, inks.ink, 1.25);
+    path(`M${left} ${band.base}H${right}`, inks.hairline, 1);
+    write(`Betti curve, dimension ${band.dimension}`, left, band.base - 38, 'start');
+    write(`most ${band.most}`, right, band.base - 38, 'end');
+  }
 }

@@ -18,10 +18,26 @@ export interface GrowthGeometry {
   readonly windows: readonly (readonly [number, number])[];
   /** Half-ellipses of single edges below the line; empty where there are too many. */
   readonly arcs: readonly string[];
+  /** Betti curves below that, by dimension. */
+  readonly betti: readonly BettiBand[];
 }
+
+/** One Betti curve in a band of its own. */
+export interface BettiBand {
+  readonly dimension: number;
+  /** Bottom of the band. */
+  readonly base: number;
+  readonly path: string;
+  /** Largest value, drawn as the height of the band. */
+  readonly most: number;
+}
+
+/** Steps [entry, value from there on] by dimension. */
+export type BettiSteps = readonly (readonly (readonly [number, number])[])[];
 
 const CURVE = 120;
 const ARCS = 90;
+const BETTI = { heading: 18, curve: 34, gap: 8 } as const;
 const MARGIN = { left: 12, right: 12, top: 24, between: 26, bottom: 8 } as const;
 /** Past so many arcs nothing can be told apart. */
 const MOST_ARCS = 3_000;
@@ -30,7 +46,11 @@ const MOST_ARCS = 3_000;
  * Nodes stand at their entries on a time axis; above it the number of edges that are there, below it
  * the edges as arcs, so that a wrong column shows as a heap or as a straight line.
  */
-export function growthGeometry(growth: ImportGrowth, width: number): GrowthGeometry {
+export function growthGeometry(
+  growth: ImportGrowth,
+  width: number,
+  steps: BettiSteps = [],
+): GrowthGeometry {
   const { entries, earliest, latest, edgesBy, edges } = growth;
   const left = MARGIN.left;
   const right = Math.max(left + 1, width - MARGIN.right);
@@ -42,10 +62,14 @@ export function growthGeometry(growth: ImportGrowth, width: number): GrowthGeome
   const place = (value: number): number =>
     to > from ? left + ((value - from) / span) * (right - left) : (left + right) / 2;
   const x = Float64Array.from(entries, place);
-  const arcs = edges !== null && edges.length <= MOST_ARCS ? edges : [];
+  const shownArcs = edges !== null && edges.length <= MOST_ARCS ? edges : [];
+  const below = base + MARGIN.between + (shownArcs.length > 0 ? ARCS : 0);
   return {
     width,
-    height: base + MARGIN.between + (arcs.length > 0 ? ARCS : 0) + MARGIN.bottom,
+    height: below + steps.length * BAND + MARGIN.bottom,
+    betti: steps.map((curve, dimension) =>
+      bandOf(curve, dimension, below + dimension * BAND, { place, right }),
+    ),
     ...{ left, right, base, top, x },
     curve: curveOf(x, edgesBy, { base, top, right }),
     windows: entries.flatMap((entry, i) => {
@@ -53,8 +77,26 @@ export function growthGeometry(growth: ImportGrowth, width: number): GrowthGeome
       if (a === null && b === null) return [];
       return [[place(a ?? entry), place(b ?? entry)] as const];
     }),
-    arcs: arcs.map(([a, b]) => arcOf(x[a] ?? 0, x[b] ?? 0, base + MARGIN.between, right - left)),
+    arcs: shownArcs.map(([a, b]) =>
+      arcOf(x[a] ?? 0, x[b] ?? 0, base + MARGIN.between, right - left),
+    ),
   };
+}
+
+const BAND = BETTI.heading + BETTI.curve + BETTI.gap;
+
+function bandOf(
+  steps: readonly (readonly [number, number])[],
+  dimension: number,
+  top: number,
+  { place, right }: { place: (value: number) => number; right: number },
+): BettiBand {
+  const base = top + BETTI.heading + BETTI.curve;
+  const most = Math.max(0, ...steps.map(([, value]) => value));
+  const y = (value: number): number => base - (value / Math.max(1, most)) * BETTI.curve;
+  let path = `M${place(steps[0]?.[0] ?? 0)} ${base}`;
+  for (const [entry, value] of steps) path += `H${place(entry)}V${y(value)}`;
+  return { dimension, base, most, path: steps.length > 0 ? `${path}H${right}` : '' };
 }
 
 /** First and last value of the axis, windows included. */

@@ -46,4 +46,19 @@ describe('the drawing of a growth', () => {
     expect(growthGeometry(growth({ edges: many }), 400).arcs).toEqual([]);
     expect(growthGeometry(growth({ edges: null }), 400).arcs).toEqual([]);
   });
+
+  it('draws a band per dimension, each with its own scale of counts', () => {
+    const steps = [
+      [
+        [0, 1],
+        [5, 4],
+      ],
+      [],
+    ] as const;
+    const { betti, height, x } = growthGeometry(growth(), 400, steps);
+    expect(betti.map(({ most }) => most)).toEqual([4, 0]);
+    expect(betti[0]!.path).toContain(`H${x[1]}V${betti[0]!.base - 34}`);
+    expect(betti[1]!.path).toBe('');
+    expect(height).toBeGreaterThan(growthGeometry(growth(), 400).height);
+  });
 });
