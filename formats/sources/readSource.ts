@@ -78,7 +78,6 @@ async function graphSource(
   limits: SourceLimits,
 ): Promise<RawSource> {
   const reader = GRAPH_READERS[format];
-  if (!reader) return refused(file.name, encoding, `Files of the format ${format} are not read.`);
   try {
     const text = decodedText(file, encoding);
     return await reader({ name: file.name, text, encoding }, limits);

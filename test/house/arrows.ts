@@ -24,7 +24,7 @@ export const FOLDERS: readonly Folder[] = [
   { folder: 'jobs/queue', packages: ['bullmq', 'ioredis', 'zod', NODE], folders: [] },
   {
     folder: 'formats',
-    packages: ['csv-parse', 'csv-stringify', 'node:crypto', 'node:stream'],
+    packages: ['csv-parse', 'csv-stringify', 'saxes', 'node:crypto', 'node:stream'],
     folders: [],
   },
   {
