@@ -5,7 +5,7 @@ import { EngineInputError, type Part } from './types';
 export interface Partners {
   readonly nodeCount: number;
   /** Positions q > p of the pairs (p, q), ascending. */
-  of(p: number): Uint32Array;
+  readonly of: (p: number) => Uint32Array;
 }
 
 /** @throws EngineInputError for a part that names positions the network does not have */
