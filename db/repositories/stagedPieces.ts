@@ -12,7 +12,7 @@ export interface EncodedPieces {
   readonly stage: string;
   /** Elements of the array. */
   readonly length: number;
-  /** Pieces of at most a few MiB. */
+  /** Pieces of at most 1 MiB. */
   readonly pieces: () => AsyncIterable<Uint8Array>;
 }
 

@@ -87,7 +87,7 @@ export const importFiles = pgTable(
   ],
 );
 
-/** The bytes of a file in pieces of at most 1 MiB: no process ever holds a whole file. */
+/** The bytes of a file in pieces: no process ever holds a whole file. */
 export const importPieces = pgTable(
   'import_pieces',
   {

@@ -1,9 +1,7 @@
-import { createReadStream } from 'node:fs';
 import { encodedPieces, type EncodedPieces } from '../../db/repositories/stagedPieces';
 import type { ArrayFile } from '../reading/messages';
-
-const PIECE = 1024 * 1024;
+import { filePieces } from './filePieces';
 
 /** The array piece by piece; the file must be there until the last is taken. */
 export const piecesOf = ({ path, length }: ArrayFile): EncodedPieces =>
-  encodedPieces(length, () => createReadStream(path, { highWaterMark: PIECE }));
+  encodedPieces(length, () => filePieces(path));

@@ -1,5 +1,5 @@
-import { createReadStream } from 'node:fs';
-import { stat } from 'node:fs/promises';
+import { stat, writeFile } from 'node:fs/promises';
+import { join } from 'node:path';
 import { IMPORT_LIMITS } from '#contract/imports';
 import type { NewImportFile } from '../../db/repositories/importFiles';
 import type { FormRules, Received } from '../datasets/uploadForm';
@@ -22,18 +22,18 @@ export const IMPORT_FORM: FormRules = {
   },
 };
 
-const PIECE = 1024 * 1024;
 const PASTED = 'Pasted text';
 /** Characters of a file's name that are kept. */
 const NAME = 120;
 
+/** Lies in the folder of what was received. */
 export interface ReceivedSource extends NewImportFile {
-  readonly pieces: () => AsyncIterable<Uint8Array> | Iterable<Uint8Array>;
+  readonly path: string;
 }
 
 /** What is to be read, in the order sent, pasted text last; each has a name of its own. */
 export async function sourcesOf(
-  { files }: Received,
+  { folder, files }: Received,
   pasted: string | undefined,
 ): Promise<ReceivedSource[]> {
   const text = pasted === undefined ? null : Buffer.from(pasted);
@@ -53,18 +53,16 @@ export async function sourcesOf(
       name: ownName(cleanName(filename) || `File ${position + 1}`, names),
       bytes: (await stat(path)).size,
       pasted: false,
-      pieces: () => createReadStream(path, { highWaterMark: PIECE }),
+      path,
     });
   }
   if (text !== null) {
-    const [position, name] = [files.length, ownName(PASTED, names)];
-    sources.push({ position, name, bytes: text.length, pasted: true, pieces: () => cut(text) });
+    const path = join(folder, 'pasted');
+    await writeFile(path, text, { mode: 0o600 });
+    const name = ownName(PASTED, names);
+    sources.push({ position: files.length, name, bytes: text.length, pasted: true, path });
   }
   return sources;
-}
-
-function* cut(text: Buffer): Generator<Uint8Array> {
-  for (let from = 0; from < text.length; from += PIECE) yield text.subarray(from, from + PIECE);
 }
 
 /** A name as somebody sent it, without folders, control characters and half characters. */

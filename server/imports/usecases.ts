@@ -21,6 +21,7 @@ import {
 } from '../../db/repositories/imports';
 import type { Scope } from '../../db/repositories/scope';
 import { piecesOf } from '../datasets/arrayPieces';
+import { filePieces } from '../datasets/filePieces';
 import type { Received } from '../datasets/uploadForm';
 import { invalid, notFound, parseBody } from '../http/parse';
 import { draftView } from '../reading/draftView';
@@ -49,12 +50,15 @@ export async function createImport(
     }
     const draft = { name: named, datasetId: datasetId ?? null };
     const made = await insertImport(transaction, scope, draft);
-    for (const { pieces, ...file } of sources) {
-      await insertImportFile(transaction, scope, made, file, pieces());
+    for (const { path, ...file } of sources) {
+      await insertImportFile(transaction, scope, made, file, filePieces(path));
     }
     return made;
   });
   try {
+    const files = sources.map((source) => ({ ...source, hint: {} }));
+    const request = { folder: received.folder, files, choices: null };
+    await keep(db, scope, { id, version: 1 }, await readByMemory(tools, scope, request));
     return await importOf(tools, scope, id);
   } catch (error) {
     // Nobody was told of it, so nobody would come back to it.
@@ -105,7 +109,7 @@ export async function importOf(
 async function keep(
   db: Db,
   scope: Scope,
-  { id, version }: ImportRow,
+  { id, version }: Pick<ImportRow, 'id' | 'version'>,
   { view, weights, growth }: ReadDraft,
 ): Promise<void> {
   await db.transaction(async (transaction) => {
