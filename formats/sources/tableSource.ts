@@ -1,4 +1,5 @@
 import { IssueList } from '../issues';
+import { isExport } from '../understanding/choices';
 import { guessRole } from './guessRole';
 import { isMatrix, matrixSource } from './matrixSource';
 import { bodyOf, layoutOf, type TableLayout } from './tableBody';
@@ -23,7 +24,8 @@ export function tableSource(
   const layout = layoutOf(file.bytes, reading, limits.lineCharacters);
   const blank = emptySource(file.name, reading);
   if (!layout) return withoutRecords(file, reading, limits, blank);
-  if (hint.format === 'matrix' || (hint.format === undefined && isMatrix(file.bytes, layout)))
+  const guessed = hint.format === undefined && !isWritten(layout.columns);
+  if (hint.format === 'matrix' || (guessed && isMatrix(file.bytes, layout)))
     return matrixSource(file, layout, limits);
   if (layout.columns.length > limits.columns) {
     return {
@@ -50,6 +52,10 @@ export function tableSource(
     leftOut: issues.leftOut,
   };
 }
+
+/** Columns as an export has them, whose nodes may be called like its columns. */
+const isWritten = (columns: readonly string[]): boolean =>
+  isExport(columns) || (columns[0] === 'source' && columns[1] === 'target');
 
 /** A source of which nothing could be read. */
 export function emptySource(file: string, reading: TextReading): RawSource {

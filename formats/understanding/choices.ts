@@ -52,8 +52,9 @@ export type WeightChoice =
 
 /**
  * Columns of a node table that carry understood values beside the raw text, as the writers give
- * them: where all four are there, values and unit are taken from them and only the raw text from the
- * entry, earliest and latest columns. Empty cells are null. So an export comes back exactly.
+ * them: where entry value and unit are there, values and unit are taken from these columns and only
+ * the raw text from the entry, earliest and latest columns. Empty cells and columns that are not
+ * there are null. So an export comes back exactly.
  */
 export const VALUE_COLUMNS = {
   entry: 'entry_value',
@@ -62,6 +63,10 @@ export const VALUE_COLUMNS = {
   /** number, days or seconds; the same in every row. */
   unit: 'entry_unit',
 } as const;
+
+/** Whether columns are those of an export. */
+export const isExport = (columns: readonly string[]): boolean =>
+  [VALUE_COLUMNS.entry, VALUE_COLUMNS.unit].every((name) => columns.includes(name));
 
 /** Something that only the person who brings the network in can know. */
 export interface Question {

@@ -4,6 +4,7 @@ import type { RawSource, RawTable } from '../sources/types';
 import { IssueList } from '../issues';
 import type { EdgeColumns, ImportChoices, NodeColumns, OrderKind, Question } from './choices';
 import { dayQuestion } from './ordering';
+import { hasValues } from './recordedTimes';
 import { pickTables, type PickedTable } from './tables';
 import { TimeScale } from './timeScale';
 
@@ -17,12 +18,15 @@ export function guessChoices(sources: readonly RawSource[]): {
 } {
   const { nodes, edges } = pickTables(sources, new IssueList());
   const columns = {
-    nodes: nodes ? guessNodeColumns(nodes.table) : NO_NODE_COLUMNS,
+    nodes: nodes ? guessNodeColumns(nodes) : NO_NODE_COLUMNS,
     edges: edges ? guessEdgeColumns(edges.table) : NO_EDGE_COLUMNS,
   };
   const kind = guessOrder(columns);
-  const decimal = sources.some(({ reading }) => reading.decimal === ',') ? ',' : '.';
-  const timed = timeColumnOf(kind, nodes, edges, columns);
+  // An export says what its times mean, and writes all numbers with a point.
+  const recorded = nodes !== null && hasValues(nodes);
+  const commas = !recorded && sources.some(({ reading }) => reading.decimal === ',');
+  const decimal = commas ? ',' : '.';
+  const timed = recorded ? null : timeColumnOf(kind, nodes, edges, columns);
   const scale = timed ? scaleOf(timed, decimal) : null;
   const choices: ImportChoices = {
     columns,
@@ -52,7 +56,11 @@ const NO_NODE_COLUMNS: NodeColumns = {
 };
 const NO_EDGE_COLUMNS: EdgeColumns = { source: null, target: null, weight: null, time: null };
 
-function guessNodeColumns(table: RawTable): NodeColumns {
+function guessNodeColumns(picked: PickedTable): NodeColumns {
+  const { table } = picked;
+  const exported =
+    hasValues(picked) && ['id', 'entry'].every((name) => table.columns.includes(name));
+  if (exported) return exportedColumns(table);
   const left = new Set(table.columns);
   const take = (column: string | null): string | null => {
     if (column !== null) left.delete(column);
@@ -68,6 +76,18 @@ function guessNodeColumns(table: RawTable): NodeColumns {
   );
   const label = take(byName(NODE_WORDS.label) ?? worded(left, 'label'));
   return { id, label, entry, earliest, latest };
+}
+
+/** The columns of an export are known, whatever their texts look like. */
+function exportedColumns({ columns }: RawTable): NodeColumns {
+  const own = (name: string): string | null => (columns.includes(name) ? name : null);
+  return {
+    id: own('id'),
+    label: own('label'),
+    entry: own('entry'),
+    earliest: own('earliest'),
+    latest: own('latest'),
+  };
 }
 
 /** A name that only may be the entry (t, order, day) is taken where its cells are times. */
@@ -122,8 +142,10 @@ function guessEdgeColumns(table: RawTable): EdgeColumns {
   }
   take(source);
   take(target);
+  // A column that is called a weight is no time, whatever its numbers look like.
+  const called = take(byName(EDGE_WORDS.weight));
   const time = take(byName(EDGE_WORDS.time) ?? edgeTime(table, left));
-  const weight = take(byName(EDGE_WORDS.weight) ?? unnamedWeight(table, left));
+  const weight = called ?? take(unnamedWeight(table, left));
   return { source, target, weight, time };
 }
 

@@ -1,6 +1,6 @@
 import { quoted, type IssueList } from '../issues';
 import type { EntryUnit } from '../types';
-import { VALUE_COLUMNS } from './choices';
+import { isExport, VALUE_COLUMNS } from './choices';
 import { NO_TIMES, type DraftNode, type NodeTimes, type TimedNodes } from './draft';
 import type { PickedTable } from './tables';
 import { readTime } from './times';
@@ -9,8 +9,7 @@ const UNITS: readonly EntryUnit[] = ['number', 'days', 'seconds'];
 const FIELDS = ['entry', 'earliest', 'latest'] as const;
 
 /** Whether a node table carries understood values beside the raw text, as an export does. */
-export const hasValues = ({ table }: PickedTable): boolean =>
-  Object.values(VALUE_COLUMNS).every((name) => table.columns.includes(name));
+export const hasValues = ({ table }: PickedTable): boolean => isExport(table.columns);
 
 /** Times taken as an export recorded them: values and unit from their columns, only the raw text from the others. */
 export function timesAsRecorded(

@@ -4,6 +4,7 @@ import type { RawSource } from '../sources/types';
 import type { EntryUnit, FileIssue, FormatLimits, NetworkNode, ReadNetwork } from '../types';
 import { checkChoices } from './choiceFaults';
 import { VALUE_COLUMNS, type ImportChoices, type Question } from './choices';
+import { withoutDefusing } from './defusedCells';
 import { readEdgeRows, type EdgeIndices, type ReadEdges } from './edgeRows';
 import { NOTHING_FOUND, type Found } from './found';
 import { placedWords, placeMissing, type Placed } from './missing';
@@ -54,7 +55,7 @@ export function understand(
     for (const issue of source.issues) issues.add(issue);
     issues.leftOut += source.leftOut;
   }
-  const tables = pickTables(sources, issues);
+  const tables = withoutDefusing(pickTables(sources, issues));
   checkChoices(choices, tables, issues);
   const told = {
     ignoredColumns: ignoredColumns(tables, choices),
