@@ -20,8 +20,9 @@ export class IssueList {
   }
 }
 
-/** @returns the text quoted for a message, cut where it is long. */
+/** @returns the text quoted for a message, cut where it is long; what cannot be stored is shown as �. */
 export function quoted(text: string): string {
-  const shown = [...text].slice(0, 40).join('');
-  return `“${shown}${shown.length < text.length ? '…' : ''}”`;
+  const shown = [...text.slice(0, 80)].slice(0, 40).join('');
+  const rest = shown.length < text.length ? '…' : '';
+  return `“${shown.replace(/[\0\p{Surrogate}]/gu, '\ufffd')}${rest}”`;
 }

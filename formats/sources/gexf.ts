@@ -179,7 +179,7 @@ class GexfReader implements XmlReader {
     const { nodes, edges } = this.tables;
     const rows = kind === 'node' ? nodes : edges;
     const value = preserve ? text : text.trim();
-    this.check(value, attribute, line, 'the default');
+    this.check(value, attribute, line, 'the default of the attribute');
     rows.setStandard(this.column(rows, attribute, line), value);
   }
 

@@ -81,15 +81,17 @@ export class ElementTimes {
   /** The earliest start or the latest end; '' where one interval has none. */
   private outermost(side: 'start' | 'end', format: TimeFormat, tables: GraphTables): string {
     let best: { text: string; value: number } | null = null;
+    let wrong = '';
     for (const interval of this.intervals) {
       const text = interval[side];
       if (text === '') return '';
       const value = this.value(text, side, format, tables);
+      if (value === null) wrong = text;
       if (value === null) continue;
       const better = best === null || (side === 'start' ? value < best.value : value > best.value);
       if (better) best = { text, value };
     }
-    return best?.text ?? '';
+    return best?.text ?? wrong;
   }
 
   private value(

@@ -144,7 +144,7 @@ class GraphmlReader implements XmlReader {
     if (!parent || key?.line !== parent.line) return;
     const { nodes, edges } = this.tables;
     const of = parent.attributes.get('for') ?? 'all';
-    const value = this.value(text, key, { preserve, line }, 'the default');
+    const value = this.value(text, key, { preserve, line }, 'the default of the attribute');
     for (const [kind, rows] of [
       ['node', nodes],
       ['edge', edges],

@@ -28,7 +28,8 @@ const ENDS: ReadonlyMap<string, End> = new Map([
 
 class NodeLinkReader {
   private directed = false;
-  private readonly withoutId: { row: number; line: number }[] = [];
+  /** Rows of nodes that have none. */
+  private readonly withoutId: number[] = [];
   /** Whether every end is written as a number, as positions are. */
   private numbersOnly = true;
   private nodesRead = false;
@@ -108,7 +109,7 @@ class NodeLinkReader {
     if (id !== undefined && key !== undefined)
       nodes.set(row, tables.attribute(nodes, line, 'key'), key);
     const own = id ?? key;
-    if (own === undefined) this.withoutId.push({ row, line });
+    if (own === undefined) this.withoutId.push(row);
     else nodes.set(row, nodes.own('id'), own);
   }
 
@@ -174,22 +175,13 @@ class NodeLinkReader {
     return kind === 'word' && text === 'null' ? '' : text;
   }
 
-  /** Nodes are named by position where none has an id; where only some have none, those are wrong. */
+  /** Nodes are named by position where none has an id; where only some have none, those are wrong later. */
   private nameNodes(): void {
     const { nodes, notes } = this.tables;
     const { withoutId } = this;
-    if (withoutId.length === 0) return;
-    const all = withoutId.length === nodes.count;
-    for (const { row, line } of withoutId) {
-      if (all) nodes.set(row, nodes.own('id'), String(row));
-      else
-        this.tables.issue(
-          line,
-          'id',
-          `Node ${row + 1} has no id. Give every node an id of its own.`,
-        );
-    }
-    if (all) notes.push('The nodes have no id, so they are named by their position, from 0.');
+    if (withoutId.length === 0 || withoutId.length < nodes.count) return;
+    for (const row of withoutId) nodes.set(row, nodes.own('id'), String(row));
+    notes.push('The nodes have no id, so they are named by their position, from 0.');
   }
 
   private resolveEnds(): void {
