@@ -192,7 +192,7 @@ class GexfReader implements XmlReader {
     const label = attributes.get('label');
     if (label !== undefined) rows.set(row, rows.own('label'), label);
     const pid = attributes.get('pid');
-    if (pid !== undefined) rows.set(row, rows.attribute('pid', 'xml pid'), pid);
+    if (pid !== undefined) rows.set(row, rows.attribute('pid', 'pid of the element'), pid);
     this.begin({ kind: 'node', rows, row, words: `the node ${quoted(id)}` }, element);
     this.countOthers(attributes, NODE_ATTRIBUTES);
   }
@@ -211,7 +211,7 @@ class GexfReader implements XmlReader {
     else rows.set(row, rows.own('weight'), weight);
     for (const name of ['id', 'label', 'kind']) {
       const given = attributes.get(name);
-      if (given !== undefined) rows.set(row, rows.attribute(name, `xml ${name}`), given);
+      if (given !== undefined) rows.set(row, rows.attribute(name, `${name} of the element`), given);
     }
     if (type === 'mutual') this.tables.drop('mutual directions');
     const words = `the edge from ${quoted(source)} to ${quoted(target)}`;
@@ -244,8 +244,9 @@ class GexfReader implements XmlReader {
       this.tables.drop('later values of attributes that change');
   }
 
-  private column(rows: ElementRows, { key, title }: Attribute, line: number): number {
-    return this.tables.attribute(rows, line, title, key);
+  /** Attributes of one title share a column: programs declare one for each type of value. */
+  private column(rows: ElementRows, { title }: Attribute, line: number): number {
+    return this.tables.attribute(rows, line, title);
   }
 
   private check(value: string, { title, type }: Attribute, line: number, words: string): void {

@@ -186,7 +186,7 @@ class GraphmlReader implements XmlReader {
     rows.set(row, rows.own('source'), source);
     rows.set(row, rows.own('target'), target);
     const id = attributes.get('id');
-    if (id !== undefined) rows.set(row, rows.attribute('id', 'xml id'), id);
+    if (id !== undefined) rows.set(row, rows.attribute('id', 'id of the element'), id);
     const ports = [attributes.get('sourceport'), attributes.get('targetport')];
     this.tables.drop(
       'ends at ports (the edge is kept)',
@@ -224,8 +224,9 @@ class GraphmlReader implements XmlReader {
       this.tables.drop('further values of one attribute of one element');
   }
 
-  private column(rows: ElementRows, { id, name }: Key, line: number): number {
-    return this.tables.attribute(rows, line, name, `key ${id}`);
+  /** Keys of one name share a column: programs declare one for each type that the values have. */
+  private column(rows: ElementRows, { name }: Key, line: number): number {
+    return this.tables.attribute(rows, line, name);
   }
 
   private value(

@@ -2,15 +2,14 @@ import { quoted } from '../issues';
 
 const NUMBER = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?$/;
 const NO_NUMBER = /^(?:nan|[+-]?inf(?:inity)?)$/i;
-const WHOLE = /^[+-]?\d+$/;
 const TRUTH = /^(?:true|false|0|1)$/i;
 
-/** Declared types of GraphML and GEXF whose values are checked. */
+/**
+ * Declared types of GraphML and GEXF whose values are checked. Whole numbers may have decimals: networkx
+ * (2.8.8) declares an attribute by its first value, and the text is kept as it is written anyway.
+ */
 const CHECKS: ReadonlyMap<string, { readonly pattern: RegExp; readonly words: string }> = new Map([
-  ...['int', 'integer', 'long', 'short', 'byte'].map(
-    (type) => [type, { pattern: WHOLE, words: 'no whole number' }] as const,
-  ),
-  ...['float', 'double', 'bigdecimal'].map(
+  ...['int', 'integer', 'long', 'short', 'byte', 'float', 'double', 'bigdecimal'].map(
     (type) => [type, { pattern: NUMBER, words: 'no number' }] as const,
   ),
   ['boolean', { pattern: TRUTH, words: 'neither true nor false' }],

@@ -262,7 +262,7 @@ export const BAD_GRAPHS: readonly BadGraphFixture[] = [
     shows: 'GraphML with repeated ids and keys, ends that are no nodes, a double that says abc',
     file: 'twins.graphml',
     problems: [
-      ['3:entry', '“soon” is no whole number'],
+      ['3:entry', '“soon” is no number'],
       ['4:key', 'already on line 2'],
       ['10:weight', '“abc” is no number, but the attribute is declared as double'],
       ['8:id', '“a” stands already on line 6'],

@@ -10,6 +10,16 @@ export type PairList = (readonly [number, number])[];
 const barcodes = z.array(z.array(z.array(z.tuple([z.number(), z.number().nullable()]))));
 const edgeLists = z.array(z.array(z.tuple([z.number(), z.number()])));
 
+const graphFiles = z.array(
+  z.object({
+    graphml: z.string(),
+    gexf: z.string(),
+    gml: z.string(),
+    json: z.string(),
+    net: z.string(),
+  }),
+);
+
 function python(script: string, input: unknown): unknown {
   const output = execFileSync('/usr/bin/python3', [join(import.meta.dirname, script)], {
     input: JSON.stringify(input),
@@ -44,6 +54,17 @@ export function networkxGraphs(
 ): [number, number][][] {
   return edgeLists.parse(python('gnpGraphs.py', requests));
 }
+
+/** A graph as it is handed to networkx: name, entry and kind of nodes; ends and weight of edges. */
+export interface GivenGraph {
+  readonly directed: boolean;
+  readonly nodes: readonly (readonly [name: string, entry: number, kind: string])[];
+  readonly edges: readonly (readonly [earlier: string, later: string, weight: number])[];
+}
+
+/** The files that networkx writes of graphs, by their endings. */
+export const networkxFiles = (graphs: readonly GivenGraph[]) =>
+  graphFiles.parse(python('graphFiles.py', graphs));
 
 /**
  * Bars of dimensions 1..top by ripser (Bauer 2021), as ranks of f. ripser filters by edges: an edge
