@@ -1,7 +1,7 @@
 import { and, asc, desc, eq, gt, lt, or, sql } from 'drizzle-orm';
 import type { Queryable, Transaction } from '../client';
 import { datasets } from '../schema/datasets';
-import { imports } from '../schema/imports';
+import { importFiles, imports } from '../schema/imports';
 import { users } from '../schema/users';
 import type { Scope } from './scope';
 
@@ -52,9 +52,23 @@ export async function listImports(db: Queryable, scope: Scope) {
 }
 export type ImportHead = Awaited<ReturnType<typeof listImports>>[number];
 
-/** @returns how many open drafts the workspace has */
-export async function countImports(db: Queryable, scope: Scope): Promise<number> {
-  return db.$count(imports, and(eq(imports.workspaceId, scope.workspaceId), isOpen()));
+/** @returns how many open drafts the workspace has, and the bytes of their files */
+export async function countImports(
+  db: Queryable,
+  scope: Scope,
+): Promise<{ readonly drafts: number; readonly bytes: number }> {
+  const [row] = await db
+    .select({
+      drafts: sql<number>`count(distinct ${imports.id})::int`,
+      bytes: sql<number>`coalesce(sum(${importFiles.bytes}), 0)::float8`,
+    })
+    .from(imports)
+    .leftJoin(
+      importFiles,
+      and(eq(importFiles.workspaceId, imports.workspaceId), eq(importFiles.importId, imports.id)),
+    )
+    .where(and(eq(imports.workspaceId, scope.workspaceId), isOpen()));
+  return row ?? { drafts: 0, bytes: 0 };
 }
 
 /** A draft that has not expired, or a saved import, with what was last read of it; or null. */

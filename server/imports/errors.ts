@@ -1,10 +1,10 @@
 import { Failure } from '../http/failure';
 
-export function tooManyImports(most: number): Failure {
+export function tooManyImports(drafts: number): Failure {
   return new Failure(
     'conflict',
     'imports.too_many',
-    `This workspace has ${most} imports that were begun and not saved; save or remove one of them first.`,
+    `This workspace keeps ${drafts} imports that were begun and not saved, and has no room for another; save or remove one of them first.`,
   );
 }
 

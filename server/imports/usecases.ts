@@ -30,8 +30,8 @@ import { alreadySaved, importChanged, tooManyImports } from './errors';
 import { readByMemory, withFiles, type ImportTools } from './reading';
 import { sourcesOf } from './receive';
 
-/** Open drafts of a workspace. */
-const MOST_OPEN = 50;
+/** Open drafts of a workspace, and the bytes of their files. */
+const MOST_OPEN = { drafts: 50, bytes: 1024 * 1024 * 1024 };
 
 /** Stores what was sent as a draft and reads it. @returns the draft, whatever is wrong with the files */
 export async function createImport(
@@ -44,7 +44,10 @@ export async function createImport(
   const sources = await sourcesOf(received, pasted);
   const named = name || sources[0]?.name.replace(/\.\w{1,8}$/, '') || 'Import';
   const id = await db.transaction(async (transaction) => {
-    if ((await countImports(transaction, scope)) >= MOST_OPEN) throw tooManyImports(MOST_OPEN);
+    const open = await countImports(transaction, scope);
+    if (open.drafts >= MOST_OPEN.drafts || open.bytes >= MOST_OPEN.bytes) {
+      throw tooManyImports(open.drafts);
+    }
     if (datasetId !== undefined && !(await findDataset(transaction, scope, datasetId))) {
       throw notFound('datasets');
     }

@@ -1,11 +1,12 @@
+import { readFileSync } from 'node:fs';
 import { eq, sql } from 'drizzle-orm';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
 import { decodeFloat64 } from '../../db/codecs/typedArrays';
 import { deleteExpiredImports } from '../../db/repositories/imports';
 import { importFiles, importPieces, imports, revisions, stagedPieces } from '../../db/schema/index';
 import { dataset, revision } from '../../server/contract/datasets';
-import { importList, importWeights } from '../../server/contract/imports';
-import { EDGES_CSV, NODES_CSV } from '../support/factories';
+import { IMPORT_LIMITS, importList, importWeights } from '../../server/contract/imports';
+import { EDGES_CSV, importForm, makeWorkspace, NODES_CSV } from '../support/factories';
 import { Importing } from '../support/importing';
 
 let by: Importing;
@@ -149,6 +150,41 @@ describe('a draft', () => {
     const { db } = by.up.app;
     expect(await db.$count(importFiles, eq(importFiles.importId, id))).toBe(0);
     expect(await db.$count(importPieces, eq(importPieces.importId, id))).toBe(0);
+  });
+
+  test('whose reading was lost with the server is read when somebody looks', async () => {
+    const draft = await by.begin(FILES);
+    const lost = { readVersion: null, view: null, weights: null };
+    await by.up.app.db.update(imports).set(lost).where(eq(imports.id, draft.id));
+    expect(await by.look(draft.id)).toEqual(draft);
+  });
+
+  test('of a graph file shows its nodes and its edges', async () => {
+    const text = readFileSync('test/formats/fixtures/graphs/reedbed.graphml', 'utf8');
+    const draft = await by.begin({ 'reedbed.graphml': text });
+    expect(draft.files).toMatchObject([{ format: 'graphml', nodes: {}, edges: {} }]);
+    expect(draft).toMatchObject({ ready: true, issues: [] });
+    expect(draft.found.nodes).toBe(draft.files[0]?.nodes?.rowCount);
+  });
+
+  test('is kept for the days that the page promises', async () => {
+    const { updatedAt, expiresAt } = await by.begin(FILES);
+    const days = (Date.parse(expiresAt) - Date.parse(updatedAt)) / 86_400_000;
+    expect(days).toBeCloseTo(IMPORT_LIMITS.days, 1);
+  });
+
+  test('is refused where the workspace has begun too many', async () => {
+    const full = await makeWorkspace(by.up.app.db, 'Full');
+    const rows = Array.from({ length: 50 }, (_, n) => ({
+      workspaceId: full.id,
+      name: `Draft ${n}`,
+      expiresAt: new Date(Date.now() + 86_400_000),
+    }));
+    await by.up.app.db.insert(imports).values(rows);
+    const owner = await by.up.app.clientOf(full.owner.id);
+    const path = `/api/workspaces/${full.id}/imports`;
+    const { status, problem } = await owner.ask(path, { form: importForm(FILES) });
+    expect([status, problem.code]).toEqual([409, 'imports.too_many']);
   });
 
   test('that nobody came back to for 30 days is gone, and then removed', async () => {

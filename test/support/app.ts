@@ -15,7 +15,7 @@ import { readConfig } from '../../server/config';
 import { UploadFolder } from '../../server/datasets/upload';
 import { DEMO_ACCOUNTS } from '../../server/demo/accounts';
 import { CONNECTION_LIMITS } from '../../server/http/connections';
-import { makeReader } from '../../server/reading/reader';
+import { makeReader, type ReaderOptions } from '../../server/reading/reader';
 import { makeRunRoutes } from '../../server/runs/routes';
 import { Client } from './client';
 import { freshDatabase, type TestDatabase } from './database';
@@ -40,6 +40,8 @@ export interface AppOptions {
   readonly redisUrl?: string;
   /** The address by which the application reaches the database, e.g. one that can be cut off. */
   readonly reach?: (databaseUrl: string) => string;
+  /** Limits of reading other than the usual ones. */
+  readonly reading?: Pick<ReaderOptions, 'heap' | 'resident' | 'time'>;
 }
 
 /** Starts the real application on a loopback port over a database of its own. */
@@ -61,7 +63,7 @@ export async function startApp(options: AppOptions = {}): Promise<TestApp> {
   const listener = openListener(url, () => undefined);
   const limits = { ...THROTTLE_LIMITS, ...options.limits };
   const throttle = makeThrottle(options.redisUrl ?? null, log, limits, `test-${randomUUID()}`);
-  const reader = makeReader({ script, log });
+  const reader = makeReader({ script, log, ...options.reading });
   const app = createApp(
     {
       config,

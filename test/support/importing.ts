@@ -4,6 +4,7 @@ import {
   type ImportDraft,
   type SavedImport,
 } from '../../server/contract/imports';
+import type { AppOptions } from './app';
 import type { Answer, Client } from './client';
 import { importForm } from './factories';
 import { Uploading } from './uploading';
@@ -15,8 +16,8 @@ export class Importing {
     readonly client: Client = up.owner,
   ) {}
 
-  static async open(): Promise<Importing> {
-    return new Importing(await Uploading.open());
+  static async open(options?: AppOptions): Promise<Importing> {
+    return new Importing(await Uploading.open(options));
   }
 
   get path(): string {

@@ -3,7 +3,7 @@ import { readdirSync } from 'node:fs';
 import { request as openRequest } from 'node:http';
 import { expect } from 'vitest';
 import { datasets } from '../../db/schema/index';
-import { startApp, type TestApp } from './app';
+import { startApp, type AppOptions, type TestApp } from './app';
 import type { Answer, Client } from './client';
 import { EDGES_CSV, makeWorkspace, networkForm, NODES_CSV } from './factories';
 
@@ -20,8 +20,8 @@ export class Uploading {
     readonly workspacePath: string,
   ) {}
 
-  static async open(): Promise<Uploading> {
-    const app = await startApp();
+  static async open(options?: AppOptions): Promise<Uploading> {
+    const app = await startApp(options);
     const made = await makeWorkspace(app.db);
     const owner = await app.clientOf(made.owner.id);
     return new Uploading(app, owner, `/api/workspaces/${made.id}`);
