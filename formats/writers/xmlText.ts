@@ -5,10 +5,9 @@ export class UnwritableText extends Error {
   override readonly name = 'UnwritableText';
 }
 
- 
 const ONLY_IN_1_1 = /[\u0001-\u0008\u000b\u000c\u000e-\u001f]/;
 const NEVER = /[\0\ufffe\uffff\p{Surrogate}]/u;
- 
+
 const ESCAPED = /[&<>"\u0001-\u001f\u007f-\u009f\u2028]/g;
 const NAMED: ReadonlyMap<string, string> = new Map([
   ['&', '&amp;'],
