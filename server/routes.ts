@@ -7,6 +7,7 @@ import { healthRoutes } from './health/routes';
 import type { RouteMap } from './http/route';
 import { importRoutes } from './imports/routes';
 import { memberRoutes } from './members/routes';
+import { modelRoutes } from './models/routes';
 import { workspaceRoutes } from './workspaces/routes';
 
 /** The rows of the access table that server/runs answers. */
@@ -39,6 +40,7 @@ export function makeRoutes(
     ...memberRoutes(dependencies),
     ...datasetRoutes(dependencies),
     ...importRoutes(dependencies),
+    ...modelRoutes(dependencies),
     ...groupRoutes(dependencies),
     ...runs,
   };

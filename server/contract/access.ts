@@ -62,6 +62,18 @@ export const ROUTES = {
     access: EDITORS,
     summary: 'Bring a network in',
   },
+  growthModels: {
+    method: 'get',
+    path: `${W}/growth-models`,
+    access: EVERYONE,
+    summary: 'Models that a network can be grown from',
+  },
+  growDataset: {
+    method: 'post',
+    path: `${W}/datasets/from-model`,
+    access: EDITORS,
+    summary: 'Grow a network from a model',
+  },
   dataset: {
     method: 'get',
     path: `${W}/datasets/:datasetId`,

@@ -1,5 +1,6 @@
 import { setPriority } from 'node:os';
 import { readDraft, readDraftNetwork, readProblems } from './draft';
+import { readGrown } from './grown';
 import type { NetworkOnDisk, Problems, ReadAnswer, ReadRequest } from './messages';
 import { readTwoFiles } from './twoFiles';
 
@@ -13,6 +14,8 @@ async function answerTo(request: ReadRequest): Promise<ReadAnswer> {
   switch (request.kind) {
     case 'two_files':
       return orProblems(await readTwoFiles(request));
+    case 'grown':
+      return readGrown(request);
     case 'view':
       return { kind: 'view', draft: await readDraft(request) };
     case 'network':

@@ -4,6 +4,7 @@ import type { ImportChoices, SourceHint } from '#contract/importChoices';
 import type { ImportWeights } from '#contract/imports';
 import type { Issue } from '#contract/problems';
 import type { NewNode } from '../../db/repositories/revisions';
+import type { GrowthRequest } from '../../models/index';
 import type { DraftView } from './draftView';
 
 /** A file of an import on disk. */
@@ -29,9 +30,17 @@ export interface TwoFilesRequest {
   readonly edgesPath: string;
 }
 
+/** A network that is grown and read where it does not hold up anybody. */
+export interface GrowRequest {
+  readonly folder: string;
+  /** Not refused by `refusalsOf`. */
+  readonly growth: GrowthRequest;
+}
+
 /** What the reading process is told: one request, then it ends. */
 export type ReadRequest =
   | ({ readonly kind: 'two_files' } & TwoFilesRequest)
+  | ({ readonly kind: 'grown' } & GrowRequest)
   | ({ readonly kind: 'view' | 'network' | 'problems' } & DraftRequest);
 
 /** A typed array as bytes of db/codecs in a file of the folder. */
@@ -69,6 +78,12 @@ export interface ReadDraft {
   readonly growth: GrowthOnDisk | null;
 }
 
+export interface GrownOnDisk {
+  readonly network: NetworkOnDisk;
+  /** Names model, parameters and seed. */
+  readonly description: string;
+}
+
 export interface Problems {
   readonly issues: readonly Issue[];
   readonly leftOut: number;
@@ -77,6 +92,7 @@ export interface Problems {
 /** What it answers. */
 export type ReadAnswer =
   | { readonly kind: 'network'; readonly network: NetworkOnDisk }
+  | ({ readonly kind: 'grown' } & GrownOnDisk)
   | { readonly kind: 'view'; readonly draft: ReadDraft }
   | ({ readonly kind: 'problems' } & Problems)
   /** A fault of the program; the message is for the log. */

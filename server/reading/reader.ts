@@ -1,11 +1,14 @@
 import { resolve } from 'node:path';
 import type { Logger } from 'pino';
 import type { Issue } from '#contract/problems';
+import { invalid } from '../http/parse';
 import { makeTurns } from '../http/turns';
 import { runChild } from './childProcess';
 import { readingBroken, tooManyReadings, wrongFiles } from './errors';
 import type {
   DraftRequest,
+  GrownOnDisk,
+  GrowRequest,
   NetworkOnDisk,
   Problems,
   ReadAnswer,
@@ -35,6 +38,8 @@ export interface Reader {
   readDraftNetwork(request: DraftRequest): Promise<NetworkOnDisk>;
   /** @throws Failure past a limit */
   readProblems(request: DraftRequest): Promise<Problems>;
+  /** Grows a network. @throws Failure `request.invalid` if too many edges come out, or past a limit */
+  grow(request: GrowRequest): Promise<GrownOnDisk>;
   /** Ends the process that reads. */
   close(): Promise<void>;
 }
@@ -85,6 +90,12 @@ export function makeReader(options: ReaderOptions): Reader {
       const answer = await ask({ kind: 'problems', ...request });
       if (answer.kind === 'problems') return answer;
       throw mismatch({ kind: 'problems', ...request }, answer);
+    },
+    grow: async (request) => {
+      const answer = await ask({ kind: 'grown', ...request });
+      if (answer.kind === 'grown') return answer;
+      if (answer.kind === 'problems') throw invalid(answer.issues, answer.leftOut);
+      throw mismatch({ kind: 'grown', ...request }, answer);
     },
     close: async () => {
       closing.abort();

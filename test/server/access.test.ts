@@ -112,6 +112,14 @@ function samples(world: World): Record<RouteName, Sample> {
     removeMember: { status: 204, parameters: member, send: { method: 'DELETE' } },
     datasets: { status: 200 },
     createDataset: { status: 201, send: () => ({ form: networkForm() }) },
+    growthModels: { status: 200 },
+    growDataset: {
+      status: 201,
+      send: {
+        method: 'POST',
+        json: { model: 'constant_probability', nodeCount: 5, seed: 1, name: 'Grown' },
+      },
+    },
     dataset: {
       status: 200,
       parameters: () => Promise.resolve({ datasetId: world.datasetId }),

@@ -38,6 +38,7 @@ export async function serve(workshop: Workshop): Promise<RunServer> {
         readDraft: unused,
         readDraftNetwork: unused,
         readProblems: unused,
+        grow: unused,
         close: () => Promise.resolve(),
       },
       demoAccounts: null,
