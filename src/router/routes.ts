@@ -67,6 +67,12 @@ export const routes: RouteRecordRaw[] = [
         component: () => import('../pages/ImportBeginPage.vue'),
       },
       {
+        path: 'workspaces/:workspaceId/models/new',
+        name: 'model-new',
+        props: true,
+        component: () => import('../pages/GrowPage.vue'),
+      },
+      {
         path: 'workspaces/:workspaceId/imports/:importId/:step',
         name: 'import',
         props: true,

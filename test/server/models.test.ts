@@ -94,9 +94,8 @@ describe('what cannot be grown is refused under its field, and nothing is saved'
     await up.nothingSaved(async () => {
       const { status, problem } = await grow({ nodeCount: 2100, parameters });
       expect(status).toBe(422);
-      expect(problem.issues).toEqual([
-        { field: 'nodeCount', message: expect.stringContaining('2,000,000') },
-      ]);
+      expect(problem.issues?.map(({ field }) => field)).toEqual(['nodeCount']);
+      expect(problem.issues?.[0]?.message).toContain('2,000,000');
     });
   });
 });
