@@ -1,4 +1,5 @@
 import type { Db } from '../db/client';
+import { purgeExpiredDatasets } from '../db/repositories/datasetLife';
 import { redispatchImportEstimates } from '../db/repositories/importEstimates';
 import { redispatchMails } from '../db/repositories/mails';
 import { askForBeat } from '../db/repositories/outbox';
@@ -62,6 +63,7 @@ export class Reconciler {
     await redispatchEstimates(this.db, PAIR_LATE);
     await redispatchImportEstimates(this.db, PAIR_LATE);
     await redispatchMails(this.db, MAIL_LATE);
+    await purgeExpiredDatasets(this.db);
     for (const run of await listSilent(this.db, SILENCE)) {
       if (await this.#isLost(run)) await tryAgain(this.db, run, this.mail);
     }

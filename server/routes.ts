@@ -1,6 +1,7 @@
 import { accountRoutes } from './accounts/routes';
 import type { Sessions } from './auth/sessions';
 import { datasetRoutes } from './datasets/routes';
+import { datasetLifeRoutes } from './datasets/lifeRoutes';
 import type { Dependencies } from './dependencies';
 import { groupRoutes } from './groups/routes';
 import { healthRoutes } from './health/routes';
@@ -39,6 +40,7 @@ export function makeRoutes(
     ...workspaceRoutes(dependencies),
     ...memberRoutes(dependencies),
     ...datasetRoutes(dependencies),
+    ...datasetLifeRoutes(dependencies),
     ...importRoutes(dependencies),
     ...modelRoutes(dependencies),
     ...groupRoutes(dependencies),

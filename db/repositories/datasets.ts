@@ -1,4 +1,4 @@
-import { and, asc, desc, eq, inArray } from 'drizzle-orm';
+import { and, asc, desc, eq, inArray, isNull } from 'drizzle-orm';
 import type { Queryable, Transaction } from '../client';
 import { datasets } from '../schema/datasets';
 import { revisions } from '../schema/revisions';
@@ -29,12 +29,22 @@ export async function insertDataset(
   return row;
 }
 
-/** The datasets of the workspace, newest first. */
-export async function listDatasets(db: Queryable, scope: Scope): Promise<DatasetRow[]> {
+/** The datasets of the workspace that are not deleted, newest first. */
+export async function listDatasets(
+  db: Queryable,
+  scope: Scope,
+  archived: 'hidden' | 'shown',
+): Promise<DatasetRow[]> {
   return db
     .select()
     .from(datasets)
-    .where(eq(datasets.workspaceId, scope.workspaceId))
+    .where(
+      and(
+        eq(datasets.workspaceId, scope.workspaceId),
+        isNull(datasets.deletedAt),
+        archived === 'hidden' ? isNull(datasets.archivedAt) : undefined,
+      ),
+    )
     .orderBy(desc(datasets.createdAt), asc(datasets.id));
 }
 
@@ -89,5 +99,9 @@ export async function listRunBriefs(db: Queryable, scope: Scope, datasetIds: rea
 export type RunBriefRow = Awaited<ReturnType<typeof listRunBriefs>>[number];
 
 function isDataset(scope: Scope, datasetId: string) {
-  return and(eq(datasets.workspaceId, scope.workspaceId), eq(datasets.id, datasetId));
+  return and(
+    eq(datasets.workspaceId, scope.workspaceId),
+    eq(datasets.id, datasetId),
+    isNull(datasets.deletedAt),
+  );
 }

@@ -1,9 +1,10 @@
-import { and, asc, eq } from 'drizzle-orm';
+import { and, asc, eq, inArray } from 'drizzle-orm';
 import type { GroupOrigin } from '#contract/enums';
 import type { Queryable } from '../client';
 import { groups } from '../schema/groups';
 import { runs } from '../schema/runs';
 import { users } from '../schema/users';
+import { ofKeptDataset } from './deletion';
 import type { Scope } from './scope';
 
 export interface NewGroup {
@@ -24,7 +25,13 @@ export async function findRevisionOfRun(
   const rows = await db
     .select({ revisionId: runs.revisionId })
     .from(runs)
-    .where(and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId)));
+    .where(
+      and(
+        eq(runs.workspaceId, scope.workspaceId),
+        eq(runs.id, runId),
+        ofKeptDataset(runs.revisionId),
+      ),
+    );
   return rows[0]?.revisionId ?? null;
 }
 
@@ -64,7 +71,19 @@ export type GroupRow = Awaited<ReturnType<typeof listGroups>>[number];
 export async function deleteGroup(db: Queryable, scope: Scope, groupId: string): Promise<boolean> {
   const rows = await db
     .delete(groups)
-    .where(and(eq(groups.workspaceId, scope.workspaceId), eq(groups.id, groupId)))
+    .where(
+      and(
+        eq(groups.workspaceId, scope.workspaceId),
+        eq(groups.id, groupId),
+        inArray(
+          groups.runId,
+          db
+            .select({ id: runs.id })
+            .from(runs)
+            .where(and(eq(runs.workspaceId, scope.workspaceId), ofKeptDataset(runs.revisionId))),
+        ),
+      ),
+    )
     .returning({ id: groups.id });
   return rows.length === 1;
 }

@@ -1,4 +1,4 @@
-import { and, asc, desc, eq, gt, lt, or, sql } from 'drizzle-orm';
+import { and, asc, desc, eq, gt, isNull, lt, or, sql } from 'drizzle-orm';
 import type { Queryable, Transaction } from '../client';
 import { datasets } from '../schema/datasets';
 import { importFiles, imports } from '../schema/imports';
@@ -198,4 +198,5 @@ const isImport = (scope: Scope, importId: string) =>
 const ofDataset = and(
   eq(datasets.workspaceId, imports.workspaceId),
   eq(datasets.id, imports.datasetId),
+  isNull(datasets.deletedAt),
 );

@@ -6,6 +6,7 @@ import { datasets } from '../schema/datasets';
 import { revisionNodes } from '../schema/revisionNodes';
 import { revisions } from '../schema/revisions';
 import { users } from '../schema/users';
+import { ofKeptDataset } from './deletion';
 import type { Scope } from './scope';
 import { removeStaged, staged, type EncodedPieces } from './stagedPieces';
 
@@ -157,7 +158,9 @@ export async function listNodes(db: Queryable, scope: Scope, revisionId: string)
       label: revisionNodes.label,
       entryRaw: revisionNodes.entryRaw,
       entry: revisionNodes.entry,
+      earliestRaw: revisionNodes.earliestRaw,
       earliest: revisionNodes.earliest,
+      latestRaw: revisionNodes.latestRaw,
       latest: revisionNodes.latest,
     })
     .from(revisionNodes)
@@ -172,7 +175,11 @@ export async function listNodes(db: Queryable, scope: Scope, revisionId: string)
 export type NodeRow = Awaited<ReturnType<typeof listNodes>>[number];
 
 function isRevision(scope: Scope, revisionId: string) {
-  return and(eq(revisions.workspaceId, scope.workspaceId), eq(revisions.id, revisionId));
+  return and(
+    eq(revisions.workspaceId, scope.workspaceId),
+    eq(revisions.id, revisionId),
+    ofKeptDataset(revisions.id),
+  );
 }
 
 /** @returns its number within the dataset, or null if the workspace has no such revision. */

@@ -4,6 +4,7 @@ import type { Db } from '../client';
 import { runs } from '../schema/index';
 import { addToOutbox } from './outbox';
 import { announceRun } from './runs';
+import { ofKeptDataset } from './deletion';
 import type { Scope } from './scope';
 
 export type { RunFocus };
@@ -16,7 +17,15 @@ export type { RunFocus };
  */
 export async function extendRun(db: Db, scope: Scope, runId: string): Promise<boolean> {
   return db.transaction(async (tx) => {
-    const mine = and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId));
+    // A dataset that is being deleted takes its runs with it: the two take turns.
+    await tx.execute(
+      sql`select 1 from workspaces where id = ${scope.workspaceId} for no key update`,
+    );
+    const mine = and(
+      eq(runs.workspaceId, scope.workspaceId),
+      eq(runs.id, runId),
+      ofKeptDataset(runs.revisionId),
+    );
     const again = {
       state: 'queued' as const,
       attempt: sql`${runs.attempt} + 1`,

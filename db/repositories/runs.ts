@@ -2,6 +2,7 @@ import { and, desc, eq, inArray, or, sql } from 'drizzle-orm';
 import type { RunPart, Scale } from '#contract/enums';
 import type { Db, Queryable } from '../client';
 import { beats, datasets, revisions, runs, users } from '../schema/index';
+import { ofKeptDataset } from './deletion';
 import { addToOutbox } from './outbox';
 import { partKey } from './runParts';
 import type { Scope } from './scope';
@@ -79,7 +80,13 @@ export async function createRun(db: Db, scope: Scope, wanted: NewRun): Promise<C
     const [revision] = await tx
       .select({ nodeCount: revisions.nodeCount })
       .from(revisions)
-      .where(and(eq(revisions.workspaceId, workspaceId), eq(revisions.id, wanted.revisionId)));
+      .where(
+        and(
+          eq(revisions.workspaceId, workspaceId),
+          eq(revisions.id, wanted.revisionId),
+          ofKeptDataset(revisions.id),
+        ),
+      );
     if (!revision) return { kind: 'no_revision' };
     const equal = await findEqual(tx, workspaceId, wanted);
     if (equal !== null) return { kind: 'found', runId: equal };
@@ -200,7 +207,7 @@ export async function findRun(db: Queryable, scope: Scope, runId: string): Promi
     .innerJoin(revisions, eq(revisions.id, runs.revisionId))
     .innerJoin(datasets, eq(datasets.id, revisions.datasetId))
     .leftJoin(users, eq(users.id, runs.requestedBy))
-    .where(and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId)));
+    .where(isReadable(scope, runId));
   return row ?? null;
 }
 
@@ -240,7 +247,7 @@ export async function findProgress(
       >`(extract(epoch from now() - ${runs.startedAt}) * 1000)::float8`,
     })
     .from(runs)
-    .where(and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId)));
+    .where(isReadable(scope, runId));
   return row ?? null;
 }
 
@@ -253,9 +260,12 @@ export async function findBarcode(
   const [row] = await db
     .select({ barcode: runs.barcode })
     .from(runs)
-    .where(and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId)));
+    .where(isReadable(scope, runId));
   return row?.barcode;
 }
+
+const isReadable = (scope: Scope, runId: string) =>
+  and(eq(runs.workspaceId, scope.workspaceId), eq(runs.id, runId), ofKeptDataset(runs.revisionId));
 
 /** Ends an unfinished run at once. @returns whether this call ended it. */
 export async function stopRun(db: Db, scope: Scope, runId: string): Promise<boolean> {

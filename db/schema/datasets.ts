@@ -16,6 +16,10 @@ export const datasets = pgTable(
     invented: boolean('invented').notNull().default(false),
     createdBy: uuid('created_by').references(() => users.id, { onDelete: 'set null' }),
     createdAt: moment('created_at').notNull().defaultNow(),
+    /** Out of the list, readable by address. */
+    archivedAt: moment('archived_at'),
+    /** Not found since; purged 30 days later. */
+    deletedAt: moment('deleted_at'),
   },
   (table) => [unique('datasets_workspace_id').on(table.workspaceId, table.id)],
 );

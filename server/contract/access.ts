@@ -80,6 +80,36 @@ export const ROUTES = {
     access: EVERYONE,
     summary: 'One dataset',
   },
+  deletedDatasets: {
+    method: 'get',
+    path: `${W}/deleted-datasets`,
+    access: EDITORS,
+    summary: 'What was deleted and can be restored',
+  },
+  archiveDataset: {
+    method: 'post',
+    path: `${W}/datasets/:datasetId/archive`,
+    access: EDITORS,
+    summary: 'Take a dataset out of the list',
+  },
+  restoreDataset: {
+    method: 'post',
+    path: `${W}/datasets/:datasetId/restore`,
+    access: EDITORS,
+    summary: 'Bring an archived or deleted dataset back',
+  },
+  deleteDataset: {
+    method: 'delete',
+    path: `${W}/datasets/:datasetId`,
+    access: EDITORS,
+    summary: 'Delete a dataset, for 30 days restorable',
+  },
+  purgeDataset: {
+    method: 'post',
+    path: `${W}/datasets/:datasetId/purge`,
+    access: OWNERS,
+    summary: 'Remove a dataset for good',
+  },
   createRevision: {
     method: 'post',
     path: `${W}/datasets/:datasetId/revisions`,

@@ -87,12 +87,36 @@ export const dataset = z.strictObject({
   /** True for demo data: invented, and labelled so everywhere. */
   invented: z.boolean(),
   createdAt: z.iso.datetime(),
+  /** Since when it is out of the list; null if it is in it. */
+  archivedAt: z.iso.datetime().nullable(),
   revisions: z.array(revisionSummary),
   /** Newest first. */
   runs: z.array(runBrief),
 });
 export type Dataset = z.infer<typeof dataset>;
 export const datasetList = z.strictObject({ datasets: z.array(dataset) });
+
+/** Query of the list. */
+export const datasetsQuery = z.strictObject({
+  archived: z.enum(['hidden', 'shown']).default('hidden'),
+});
+
+/** Deleted datasets that can be restored, latest first. */
+export const deletedDatasetList = z.strictObject({
+  datasets: z.array(
+    z.strictObject({
+      id: z.uuid(),
+      name: z.string(),
+      invented: z.boolean(),
+      deletedAt: z.iso.datetime(),
+      restorableUntil: z.iso.datetime(),
+    }),
+  ),
+});
+export type DeletedDatasetList = z.infer<typeof deletedDatasetList>;
+
+/** The name of the dataset, typed as it is. */
+export const purgeDatasetRequest = z.strictObject({ name: z.string().max(160) });
 
 /** One node of a revision, in the row order of nodes.csv. */
 export const revisionNode = z.strictObject({
@@ -102,7 +126,10 @@ export const revisionNode = z.strictObject({
   entryRaw: z.string(),
   /** In the revision's entry unit; days and seconds count from 1970-01-01 UTC. */
   entry: z.number(),
+  /** As written; empty where nothing was, even if the end of the window is known. */
+  earliestRaw: z.string(),
   earliest: z.number().nullable(),
+  latestRaw: z.string(),
   latest: z.number().nullable(),
 });
 export type RevisionNode = z.infer<typeof revisionNode>;

@@ -17,6 +17,7 @@ export function presentDataset({ dataset, revisions, runs }: DatasetWithHistory)
     description: dataset.description,
     invented: dataset.invented,
     createdAt: dataset.createdAt.toISOString(),
+    archivedAt: dataset.archivedAt?.toISOString() ?? null,
     revisions: revisions.map(presentSummary),
     runs: runs.map(presentRunBrief),
   };
@@ -56,7 +57,9 @@ function presentNode(row: NodeRow): RevisionNode {
     label: row.label,
     entryRaw: row.entryRaw,
     entry: row.entry,
+    earliestRaw: row.earliestRaw,
     earliest: row.earliest,
+    latestRaw: row.latestRaw,
     latest: row.latest,
   };
 }

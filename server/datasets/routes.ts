@@ -1,7 +1,7 @@
 import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { z } from 'zod';
-import { createDatasetFields } from '#contract/datasets';
+import { createDatasetFields, datasetsQuery } from '#contract/datasets';
 import { decodeUint32 } from '../../db/codecs/typedArrays';
 import { findRevision, listNodes } from '../../db/repositories/revisions';
 import type { Dependencies } from '../dependencies';
@@ -23,8 +23,8 @@ type DatasetRoutes = Pick<
 
 export function datasetRoutes({ database: { db }, reader, uploads }: Dependencies): DatasetRoutes {
   return {
-    datasets: route('datasets', {}, async ({ member }) =>
-      ok({ datasets: (await datasetsOf(db, member)).map(presentDataset) }),
+    datasets: route('datasets', { query: datasetsQuery }, async ({ member, query }) =>
+      ok({ datasets: (await datasetsOf(db, member, query.archived)).map(presentDataset) }),
     ),
     dataset: route('dataset', { params: oneDataset }, async ({ member, params }) =>
       ok(presentDataset(await datasetOf(db, member, params.datasetId))),

@@ -100,8 +100,12 @@ async function saveRevision(
   return { datasetId, revisionId, number };
 }
 
-export async function datasetsOf(db: Db, scope: Scope): Promise<DatasetWithHistory[]> {
-  return withHistory(db, scope, await listDatasets(db, scope));
+export async function datasetsOf(
+  db: Db,
+  scope: Scope,
+  archived: 'hidden' | 'shown',
+): Promise<DatasetWithHistory[]> {
+  return withHistory(db, scope, await listDatasets(db, scope, archived));
 }
 
 /** @throws Failure `datasets.not_found` */

@@ -66,7 +66,7 @@ async function firstOwner(
 }
 
 async function makeNetworks(db: Db, scope: Scope): Promise<void> {
-  const there = new Set((await datasetsOf(db, scope)).map(({ dataset }) => dataset.name));
+  const there = new Set((await datasetsOf(db, scope, 'shown')).map(({ dataset }) => dataset.name));
   for (const network of demoNetworks()) {
     if (there.has(network.name)) continue;
     const { name, description, invented } = network;
@@ -87,7 +87,9 @@ async function read({ name, nodesCsv, edgesCsv }: DemoNetwork) {
 }
 
 async function makeRun(db: Db, scope: Scope): Promise<void> {
-  const shown = (await datasetsOf(db, scope)).find(({ dataset }) => dataset.name === SHOWN);
+  const shown = (await datasetsOf(db, scope, 'shown')).find(
+    ({ dataset }) => dataset.name === SHOWN,
+  );
   const revision = shown?.revisions[0];
   if (!shown || !revision || shown.runs.length > 0) return;
   const chosen = { scale: 'rank' as const, dimensions: [1, 2, 3], part: WHOLE };

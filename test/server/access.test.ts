@@ -69,6 +69,7 @@ function samples(world: World): Record<RouteName, Sample> {
   const { scope } = world.workspace;
   const run = () => Promise.resolve({ runId: world.runId });
   const draft = async () => ({ importId: await makeImport(db, scope) });
+  const fresh = async () => ({ datasetId: (await makeDataset(db, scope)).id });
   const member = async () => ({ userId: (await makeMember(db, scope, 'reviewer')).id });
   return {
     health: { status: 200 },
@@ -123,6 +124,15 @@ function samples(world: World): Record<RouteName, Sample> {
     dataset: {
       status: 200,
       parameters: () => Promise.resolve({ datasetId: world.datasetId }),
+    },
+    deletedDatasets: { status: 200 },
+    archiveDataset: { status: 200, parameters: fresh, send: { method: 'POST' } },
+    restoreDataset: { status: 200, parameters: fresh, send: { method: 'POST' } },
+    deleteDataset: { status: 204, parameters: fresh, send: { method: 'DELETE' } },
+    purgeDataset: {
+      status: 204,
+      parameters: fresh,
+      send: { method: 'POST', json: { name: 'Path of three' } },
     },
     createRevision: {
       status: 201,

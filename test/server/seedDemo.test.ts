@@ -54,7 +54,7 @@ it('makes three people of each role who can sign in, five datasets and one run',
       { workspaceName: 'Saltmere Fen', role },
     ]);
   }
-  const made = await datasetsOf(db, await ownersScope());
+  const made = await datasetsOf(db, await ownersScope(), 'hidden');
   expect(made).toHaveLength(5);
   expect(made[0]?.dataset).toMatchObject({ name: 'Saltmere re-flooding survey', invented: true });
   expect(made.flatMap((one) => one.runs)).toMatchObject([
@@ -65,7 +65,7 @@ it('makes three people of each role who can sign in, five datasets and one run',
 it('ends with a finished run once a worker is there', async () => {
   await seedDemo(workshop.db, passwords);
   const scope = await ownersScope();
-  const [run] = (await datasetsOf(workshop.db, scope)).flatMap((one) => one.runs);
+  const [run] = (await datasetsOf(workshop.db, scope, 'hidden')).flatMap((one) => one.runs);
   workshop.startWorker();
   const done = await workshop.reached(scope, run?.id ?? '', ({ state }) => state === 'done', 40);
   expect(done).toMatchObject({ pairsDone: 1035, pairsTotal: 1035, failureCode: null });
