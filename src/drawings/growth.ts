@@ -1,6 +1,11 @@
 import { select } from 'd3';
 import type { ImportGrowth } from '#contract/imports';
-import { growthGeometry, type BettiSteps, type GrowthGeometry } from './growthGeometry';
+import {
+  arrivalNear,
+  growthGeometry,
+  type BettiSteps,
+  type GrowthGeometry,
+} from './growthGeometry';
 import type { Inks } from './inks';
 
 export interface GrowthScene {
@@ -11,10 +16,14 @@ export interface GrowthScene {
   readonly inks: Inks;
   /** Arrival that the cursor is on, null for none. */
   readonly cursor: number | null;
+  /** A value of the entry unit in words. */
+  readonly words: (value: number) => string;
 }
 
 export interface GrowthDrawing {
   readonly update: (scene: GrowthScene) => void;
+  /** The arrival that stands nearest to a pixel from the left; null before the first update. */
+  readonly arrivalAt: (x: number) => number | null;
   readonly destroy: () => void;
 }
 
@@ -24,31 +33,31 @@ export function drawGrowth(element: HTMLElement): GrowthDrawing {
   const body = svg.append('g').attr('fill', 'none');
   const mark = svg.append('path');
   let drawn: GrowthScene | null = null;
+  let geometry: GrowthGeometry | null = null;
 
   return {
     update(scene) {
       const { growth, betti, width, inks, cursor } = scene;
-      const geometry = growthGeometry(growth, width, betti);
-      const same = drawn?.growth === growth && drawn.betti === betti;
-      if (!same || drawn?.width !== width || drawn.inks !== inks) {
+      const same = drawn?.growth === growth && drawn.betti === betti && drawn.width === width;
+      const now = geometry !== null && same ? geometry : growthGeometry(growth, width, betti);
+      if (now !== geometry || drawn?.inks !== inks) {
         svg
           .attr('width', width)
-          .attr('height', geometry.height)
+          .attr('height', now.height)
           .attr('font-family', inks.font)
           .attr('font-size', 11);
         body.selectAll('*').remove();
-        drawBody(body.node(), geometry, growth, inks);
+        drawBody(body.node(), now, scene);
       }
       drawn = scene;
-      const at = cursor === null ? null : geometry.x[cursor];
+      geometry = now;
+      const at = cursor === null ? undefined : now.x[cursor];
       mark
-        .attr(
-          'd',
-          at === null || at === undefined ? '' : `M${at} ${geometry.top - 6}V${geometry.base + 10}`,
-        )
+        .attr('d', at === undefined ? '' : `M${at} ${now.top - 6}V${now.height}`)
         .attr('stroke', inks.woad)
         .attr('stroke-width', 2);
     },
+    arrivalAt: (x) => geometry && arrivalNear(geometry.x, x),
     destroy: () => svg.remove(),
   };
 }
@@ -56,8 +65,7 @@ export function drawGrowth(element: HTMLElement): GrowthDrawing {
 function drawBody(
   node: SVGGElement | null,
   geometry: GrowthGeometry,
-  growth: ImportGrowth,
-  inks: Inks,
+  { growth, inks, words }: GrowthScene,
 ): void {
   if (node === null) return;
   const g = select(node);
@@ -67,7 +75,7 @@ function drawBody(
   path(arcs.join(''), inks.edge, 0.75).attr('stroke-opacity', 0.6);
   path(`M${left} ${base}H${right}`, inks.hairline, 1);
   path(
-    windows.map(([from, to]) => `M${from} ${base + 12}H${Math.max(to, from + 1)}`).join(''),
+    windows.map(({ from, to, y }) => `M${from} ${y}H${Math.max(to, from + 1)}`).join(''),
     inks.weld,
     2,
   );
@@ -81,12 +89,16 @@ function drawBody(
       .attr('text-anchor', anchor)
       .attr('fill', inks.quiet)
       .text(text);
+  for (const tick of geometry.ticks) {
+    write(words(tick.value), tick.wordsX, geometry.words, 'middle');
+    path(`M${tick.x} ${base}V${geometry.words - 11}`, inks.hairline, 1).lower();
+  }
   write('edges that are there', left, top - 10, 'start');
   write(`${growth.edgesBy.at(-1) ?? 0} in the end`, right, top - 10, 'end');
   for (const band of geometry.betti) {
     path(band.path, inks.ink, 1.25);
     path(`M${left} ${band.base}H${right}`, inks.hairline, 1);
-    write(`Betti curve, dimension ${band.dimension}`, left, band.base - 38, 'start');
-    write(`most ${band.most}`, right, band.base - 38, 'end');
+    write(`Betti curve, dimension ${band.dimension}`, left, band.base - 40, 'start');
+    write(`most ${band.most}`, right, band.base - 40, 'end');
   }
 }

@@ -1,5 +1,6 @@
 import type { ImportGrowth } from '#contract/imports';
 import { formatCount, formatNoun } from '../../composables/localeFormat';
+import { stepAt, type BettiSteps } from '../../drawings/growthGeometry';
 
 const DAY = 86_400_000;
 
@@ -24,8 +25,11 @@ export function entryWords(growth: ImportGrowth, i: number): string {
   return `${entry} (${end(from)} to ${end(to)})`;
 }
 
-/** "7th arrival of 46: Marsh marigold, 2031-04-09; 12 edges by then." */
-export function arrivalWords(growth: ImportGrowth, i: number): string {
-  const edges = formatNoun(growth.edgesBy[i] ?? 0, 'edge');
-  return `Arrival ${formatCount(i + 1)} of ${formatCount(growth.entries.length)}: ${growth.labels[i] ?? ''}, ${entryWords(growth, i)}; ${edges} by then.`;
+/** "Arrival 7 of 46: Marsh marigold, 2031-04-09; 12 edges by then; Betti numbers 1, 2, 0, 0." */
+export function arrivalWords(growth: ImportGrowth, betti: BettiSteps, i: number): string {
+  const { entries, labels, edgesBy } = growth;
+  const edges = formatNoun(edgesBy[i] ?? 0, 'edge');
+  const numbers = betti.map((steps) => formatCount(stepAt(steps, entries[i] ?? 0)));
+  const curves = numbers.length > 0 ? `; Betti numbers ${numbers.join(', ')}` : '';
+  return `Arrival ${formatCount(i + 1)} of ${formatCount(entries.length)}: ${labels[i] ?? ''}, ${entryWords(growth, i)}; ${edges} by then${curves}.`;
 }
