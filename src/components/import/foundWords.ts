@@ -1,5 +1,6 @@
 import type { ImportDraft } from '#contract/imports';
-import { formatCount } from '../../composables/localeFormat';
+import { formatCount, formatNoun } from '../../composables/localeFormat';
+import { awaitsDayOrder } from './orderChoices';
 
 export interface FoundLine {
   readonly name: string;
@@ -8,30 +9,40 @@ export interface FoundLine {
   readonly meaning: string;
 }
 
-type Found = ImportDraft['found'];
-
 /** Name, count and consequence of everything that was found; lines that count nothing are left out. */
-export function foundLines(found: Found): FoundLine[] {
+export function foundLines(draft: ImportDraft): FoundLine[] {
+  const { found } = draft;
   const lines: FoundLine[] = [];
   const say = (count: number, name: string, meaning: string, always = { shown: false }): void => {
     if (count > 0 || always.shown) lines.push({ name, count: formatCount(count), meaning });
   };
-  say(found.nodes, 'Nodes', `from ${formatCount(found.nodeRows)} rows`, { shown: true });
-  say(found.edges, 'Edges', `from ${formatCount(found.edgeRows)} rows`, { shown: true });
-  say(found.components, 'Components', 'parts without an edge between them');
+  const always = { shown: true };
+  const rows = (count: number): string => `from ${formatNoun(count, 'row')}`;
+  say(found.nodes, 'Nodes', rows(found.nodeRows), always);
+  say(found.edges, 'Edges', rows(found.edgeRows), always);
+  say(found.components, 'Components', 'parts without an edge between them', always);
   say(found.isolated, 'Nodes without an edge', 'kept; each is a component');
+  const groups = found.ties > 0 ? `, in ${formatNoun(found.ties, 'group')}` : '';
   say(
     found.tiedNodes,
     'Tied nodes',
-    `share an entry, in ${formatCount(found.ties)} groups; they arrive at the same step`,
+    `share an entry with another${groups}; they arrive together`,
+    always,
   );
-  say(found.selfLoops, 'Self loops', 'dropped');
-  say(found.duplicates, 'Repeated edges', 'folded into one');
+  say(found.selfLoops, 'Self loops', 'dropped', always);
+  say(found.duplicates, 'Repeated edges', 'folded into one', always);
   say(found.reversed, 'Edges in both directions', 'folded into one; direction is ignored');
   say(found.differingWeights, 'Repeated edges of different weight', 'the largest weight was kept');
-  say(found.repeatedLabels, 'Nodes with the label of another', 'kept apart by their ids');
-  say(found.nodesOnlyInEdges, 'Nodes named only by edges', 'no row of the node table has their id');
-  say(found.nodesWithoutEntry, 'Nodes without an entry', 'see the step Order');
+  say(found.repeatedLabels, 'Nodes with the label of another', 'kept apart by their ids', always);
+  say(
+    found.nodesOnlyInEdges,
+    'Nodes named only by edges',
+    'no row of the node table has their id',
+    always,
+  );
+  // While dates cannot be read, those that are there count as missing.
+  if (!awaitsDayOrder(draft))
+    say(found.nodesWithoutEntry, 'Nodes without an entry', missingMeaning(draft), always);
   say(found.placedLast, 'Nodes placed last', 'they had no entry');
   say(found.nodesLeftOut, 'Nodes left out', 'they had no entry');
   say(found.edgesLeftOut, 'Edges left out', 'an end of theirs was left out');
@@ -43,7 +54,16 @@ export function foundLines(found: Found): FoundLine[] {
   say(found.windows.months, 'Windows of a month', 'only the month was given');
   say(found.windows.tolerance, 'Windows from the tolerance', 'entry ± tolerance');
   for (const { what, count } of found.dropped)
-    say(count, `Not kept: ${what}`, 'dropped by the reader');
-  say(found.ignoredColumns.length, 'Columns read past', found.ignoredColumns.join(', '));
+    say(count, `Not kept: ${what}`, 'left out when the file was read');
+  say(found.ignoredColumns.length, 'Columns read past', found.ignoredColumns.join(', '), always);
   return lines;
 }
+
+const MISSING_MEANING = {
+  refuse: 'a fault, as chosen in the step Order',
+  leave_out: 'left out, as chosen in the step Order',
+  last: 'placed last, as chosen in the step Order',
+} as const;
+
+const missingMeaning = ({ choices, found }: ImportDraft): string =>
+  found.nodesWithoutEntry > 0 ? MISSING_MEANING[choices.missing] : '';

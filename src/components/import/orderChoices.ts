@@ -1,3 +1,6 @@
+import type { ImportDraft } from '#contract/imports';
+import { formatCount } from '../../composables/localeFormat';
+
 export const ORDERS = [
   {
     value: 'column',
@@ -22,7 +25,7 @@ export const DAYS = [
 ] as const;
 
 export const YEARS = [
-  { value: 'numbers', label: 'are numbers' },
+  { value: 'numbers', label: 'are numbers', meaning: 'Each is one point on the axis.' },
   {
     value: 'dates',
     label: 'are years',
@@ -44,5 +47,34 @@ export const MISSING = [
   },
 ] as const;
 
-/** A tolerance counts in these. */
-export const UNIT_WORDS = { number: 'units', days: 'days', seconds: 'seconds' } as const;
+/** What a tolerance counts in; until there is a network the unit of the entries is not known. */
+export const UNIT_WORDS = {
+  number: 'the unit of the entries',
+  days: 'days',
+  seconds: 'seconds',
+  unknown: 'the unit of the entries: days where they are dates',
+} as const;
+
+/** Why the order cannot be taken from where it was chosen, or undefined. */
+export function orderFault(draft: ImportDraft): string | undefined {
+  const { order, columns } = draft.choices;
+  if (order.kind === 'column' && columns.nodes.entry === null) {
+    return 'No column is chosen that says when the nodes arrived. Choose one in the step Columns, or another order here.';
+  }
+  if (order.kind === 'first_edge' && columns.edges.time === null) {
+    return 'The edges have no column of times. Choose one in the step Columns, or another order here.';
+  }
+  return undefined;
+}
+
+/** Whether the entries cannot be read until the order of day and month is known. */
+export const awaitsDayOrder = ({ questions }: ImportDraft): boolean =>
+  questions.some(({ kind, blocking }) => kind === 'day_order' && blocking);
+
+/** How many nodes have no entry; no number while their dates cannot be read. */
+export function missingLabel(draft: ImportDraft): string {
+  if (awaitsDayOrder(draft) || draft.found.nodes === 0) return 'Nodes without an entry';
+  const { nodesWithoutEntry, placedLast, nodesLeftOut } = draft.found;
+  const count = Math.max(nodesWithoutEntry, placedLast, nodesLeftOut);
+  return `Nodes without an entry: ${formatCount(count)}`;
+}

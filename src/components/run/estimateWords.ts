@@ -29,7 +29,12 @@ export function formatSpan(seconds: number): string {
 /** Seconds below which only the upper end is told: nobody plans by less, and starting up weighs most. */
 const SHORT = 2;
 
-function timeWords({ seconds, margin, startUp }: RunEstimate): string {
+/** What all pairs would take, with its range. */
+export function spanWords({
+  seconds,
+  margin,
+  startUp,
+}: Pick<RunEstimate, 'seconds' | 'margin' | 'startUp'>): string {
   const most = seconds * margin + startUp;
   if (most < SHORT) return `under ${formatSpan(SHORT)} of one thread`;
   const range = `${formatSpan(seconds / margin)} to ${formatSpan(most)}`;
@@ -47,7 +52,7 @@ export function estimateWords(estimate: RunEstimate): string {
   return [
     formatNoun(estimate.pairs, 'pair'),
     `Cliques: ${cliqueWords(estimate.cliques)}`,
-    timeWords(estimate),
+    spanWords(estimate),
     `about ${formatBytes(estimate.bytes)} of memory`,
   ].join(' · ');
 }
