@@ -5,7 +5,7 @@ export class WorkspacePage {
 
   /** Begins a guided import. */
   get bringIn(): Locator {
-    return this.page.getByRole('link', { name: 'Bring a network in' });
+    return this.page.getByRole('link', { name: 'Bring in a network' });
   }
 
   /** The short way for two files that are as the samples. */
@@ -15,7 +15,7 @@ export class WorkspacePage {
 
   /** An import that was begun. */
   begun(name: string): Locator {
-    return this.page.getByRole('region', { name: 'Imports begun' }).getByRole('link', { name });
+    return this.page.getByRole('region', { name: 'Begun imports' }).getByRole('link', { name });
   }
 
   get members(): Locator {
