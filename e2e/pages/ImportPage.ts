@@ -1,9 +1,13 @@
-import type { Locator, Page } from '@playwright/test';
+import { expect, type Locator, type Page } from '@playwright/test';
 
 export interface TextFile {
   readonly name: string;
   readonly text: string;
 }
+
+/** As a file chooser takes them. */
+export const payloads = (files: readonly TextFile[]) =>
+  files.map(({ name, text }) => ({ name, mimeType: 'text/plain', buffer: Buffer.from(text) }));
 
 /** The guided import: its beginning and its five steps. */
 export class ImportPage {
@@ -23,6 +27,10 @@ export class ImportPage {
 
   get name(): Locator {
     return this.page.getByLabel('Name of the dataset');
+  }
+
+  get description(): Locator {
+    return this.page.getByLabel('Description');
   }
 
   get save(): Locator {
@@ -67,10 +75,18 @@ export class ImportPage {
 
   async begin(workspaceId: string, files: readonly TextFile[]): Promise<void> {
     await this.page.goto(`/workspaces/${workspaceId}/imports/new`);
-    await this.files.setInputFiles(
-      files.map(({ name, text }) => ({ name, mimeType: 'text/plain', buffer: Buffer.from(text) })),
-    );
+    await this.choose(files);
+  }
+
+  /** Chooses files on the page where an import begins, and waits until they are read. */
+  async choose(files: readonly TextFile[]): Promise<void> {
+    await this.files.setInputFiles(payloads(files));
     await this.read.click();
     await this.steps.waitFor();
+  }
+
+  /** Waits until every change has been read. */
+  async settled(): Promise<void> {
+    await expect(this.page.getByText('Reading again …')).toHaveCount(0);
   }
 }
