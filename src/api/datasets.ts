@@ -1,12 +1,14 @@
 import {
   dataset,
   datasetList,
+  deletedDatasetList,
   revision,
   type CreateDatasetFields,
   type Dataset,
+  type DeletedDatasetList,
   type Revision,
 } from '#contract/datasets';
-import { inWorkspace, requestJson } from './client';
+import { inWorkspace, requestJson, requestNothing } from './client';
 import { uploadForm, type Upload } from './upload';
 
 /** The two files of a network and its arrival record. */
@@ -17,12 +19,31 @@ export interface NetworkFiles {
 
 type OnBytes = (sent: number, total: number) => void;
 
-export async function getDatasets(workspaceId: string): Promise<Dataset[]> {
-  return (await requestJson(inWorkspace(workspaceId, 'datasets'), datasetList)).datasets;
+/** Whether the list holds archived datasets too. */
+export type Archived = 'hidden' | 'shown';
+
+export async function getDatasets(workspaceId: string, archived: Archived): Promise<Dataset[]> {
+  const path = `${inWorkspace(workspaceId, 'datasets')}?archived=${archived}`;
+  return (await requestJson(path, datasetList)).datasets;
 }
 
 export const getDataset = (workspaceId: string, datasetId: string): Promise<Dataset> =>
   requestJson(inWorkspace(workspaceId, 'datasets', datasetId), dataset);
+
+export const getDeletedDatasets = async (
+  workspaceId: string,
+): Promise<DeletedDatasetList['datasets']> =>
+  (await requestJson(inWorkspace(workspaceId, 'deleted-datasets'), deletedDatasetList)).datasets;
+
+export const moveDataset = (
+  workspaceId: string,
+  datasetId: string,
+  verb: 'archive' | 'restore',
+): Promise<Dataset> =>
+  requestJson(inWorkspace(workspaceId, 'datasets', datasetId, verb), dataset, { method: 'POST' });
+
+export const deleteDataset = (workspaceId: string, datasetId: string): Promise<void> =>
+  requestNothing(inWorkspace(workspaceId, 'datasets', datasetId), { method: 'DELETE' });
 
 export const getRevision = (workspaceId: string, revisionId: string): Promise<Revision> =>
   requestJson(inWorkspace(workspaceId, 'revisions', revisionId), revision);

@@ -1,6 +1,6 @@
 import { ref, shallowRef } from 'vue';
 import { defineStore } from 'pinia';
-import type { CreateDatasetFields, Dataset } from '#contract/datasets';
+import type { CreateDatasetFields, Dataset, DeletedDatasetList } from '#contract/datasets';
 import * as api from '../api/datasets';
 import type { Upload } from '../api/upload';
 
@@ -8,13 +8,29 @@ import type { Upload } from '../api/upload';
 export const useDatasetsStore = defineStore('datasets', () => {
   const list = shallowRef<Dataset[]>([]);
   const current = shallowRef<Dataset | null>(null);
+  /** What was deleted and can be restored. */
+  const deleted = shallowRef<DeletedDatasetList['datasets']>([]);
   /** Bytes of the running upload that have left, of all; null while none runs. */
   const sent = ref<{ bytes: number; total: number } | null>(null);
   let running: Upload<Dataset> | null = null;
 
-  async function loadList(workspaceId: string): Promise<void> {
-    list.value = await api.getDatasets(workspaceId);
+  async function loadList(workspaceId: string, archived: api.Archived = 'hidden'): Promise<void> {
+    list.value = await api.getDatasets(workspaceId, archived);
   }
+
+  async function loadDeleted(workspaceId: string): Promise<void> {
+    deleted.value = await api.getDeletedDatasets(workspaceId);
+  }
+
+  async function move(
+    workspaceId: string,
+    datasetId: string,
+    verb: 'archive' | 'restore',
+  ): Promise<void> {
+    current.value = await api.moveDataset(workspaceId, datasetId, verb);
+  }
+
+  const remove = api.deleteDataset;
 
   async function load(workspaceId: string, datasetId: string): Promise<void> {
     if (current.value?.id !== datasetId) current.value = null;
@@ -52,5 +68,8 @@ export const useDatasetsStore = defineStore('datasets', () => {
     running?.abort();
   }
 
-  return { list, current, sent, loadList, load, create, createRevision, abort };
+  return {
+    ...{ list, current, deleted, sent },
+    ...{ loadList, loadDeleted, load, create, createRevision, abort, move, remove },
+  };
 });
