@@ -1,4 +1,5 @@
 import { quoted } from '../issues';
+import { LineCount } from './lineCount';
 import type { SourceLimits } from './types';
 import { Unreadable } from './unreadable';
 
@@ -36,23 +37,18 @@ const LATIN =
 export class GmlText {
   private at = 0;
   private depth = 0;
-  private lineAt = 0;
-  private lineCount = 1;
+  private readonly lines: LineCount;
   comments = 0;
 
   constructor(
     private readonly source: string,
     private readonly limits: SourceLimits,
-  ) {}
+  ) {
+    this.lines = new LineCount(source);
+  }
 
   line(): number {
-    for (;;) {
-      const feed = this.source.indexOf('\n', this.lineAt);
-      if (feed < 0 || feed >= this.at) break;
-      this.lineCount++;
-      this.lineAt = feed + 1;
-    }
-    return this.lineCount;
+    return this.lines.at(this.at);
   }
 
   /**

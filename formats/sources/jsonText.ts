@@ -1,4 +1,5 @@
 import { quoted } from '../issues';
+import { LineCount } from './lineCount';
 import type { SourceLimits } from './types';
 import { Unreadable } from './unreadable';
 
@@ -29,24 +30,19 @@ const ESCAPED: Readonly<Record<string, string>> = {
 export class JsonText {
   private at = 0;
   private depth = 0;
-  private lineAt = 0;
-  private lineCount = 1;
+  private readonly lines: LineCount;
 
   constructor(
     private readonly source: string,
     private readonly limits: SourceLimits,
-  ) {}
+  ) {
+    this.lines = new LineCount(source);
+  }
 
   /** Line of what comes next. */
   line(): number {
     this.spaces();
-    for (;;) {
-      const feed = this.source.indexOf('\n', this.lineAt);
-      if (feed < 0 || feed >= this.at) break;
-      this.lineCount++;
-      this.lineAt = feed + 1;
-    }
-    return this.lineCount;
+    return this.lines.at(this.at);
   }
 
   kind(): JsonKind {

@@ -1,5 +1,7 @@
 import { SaxesParser, type SaxesAttributePlain } from 'saxes';
 import { quoted } from '../issues';
+import { LineCount } from './lineCount';
+import { loneAmpersand } from './loneAmpersand';
 import type { SourceLimits } from './types';
 import { Unreadable } from './unreadable';
 
@@ -19,7 +21,7 @@ export interface XmlElement {
 
 export interface XmlReader {
   open(element: XmlElement): void;
-  /** @param text all text that stands directly in the element, CDATA with the rest */
+  /** @param text what stands directly in the element after its last child, CDATA with the rest */
   close(element: XmlElement, text: string): void;
 }
 
@@ -39,7 +41,7 @@ const MOST_ATTRIBUTES = 256;
  * @throws Unreadable with the line of the first thing that is wrong
  */
 export function readXml(text: string, limits: SourceLimits, reader: XmlReader): void {
-  new XmlWalk(limits, reader).read(text);
+  new XmlWalk(text, limits, reader).read();
 }
 
 class XmlWalk {
@@ -52,6 +54,7 @@ class XmlWalk {
   private attributes = new Map<string, string>();
 
   constructor(
+    private readonly source: string,
     private readonly limits: SourceLimits,
     private readonly reader: XmlReader,
   ) {
@@ -69,9 +72,9 @@ class XmlWalk {
     parser.on('closetag', () => this.closed());
   }
 
-  read(text: string): void {
-    // The first line may be a byte order mark's; the decoder has left that out.
-    for (let at = 0; at < text.length; at += PIECE) this.parser.write(text.slice(at, at + PIECE));
+  read(): void {
+    const { source, parser } = this;
+    for (let at = 0; at < source.length; at += PIECE) parser.write(source.slice(at, at + PIECE));
     this.parser.close();
   }
 
@@ -115,6 +118,9 @@ class XmlWalk {
       preserve: space === undefined ? (parent?.preserve ?? false) : space === 'preserve',
       text: '',
     };
+    // Only layout stands between elements; it would grow with their number.
+    const above = this.stack.at(-1);
+    if (above) above.text = '';
     this.stack.push(open);
     this.reader.open(open);
   }
@@ -142,6 +148,11 @@ class XmlWalk {
   private fail(message: string): never {
     const said = message.replace(/^\d+:\d+: /, '');
     const { parser } = this;
+    if (/^(?:unclosed tag|unexpected end|disallowed character in entity)/.test(said)) {
+      // saxes looks for the end of a reference that never ends, through everything that follows.
+      const at = loneAmpersand(this.source);
+      if (at >= 0) throw new Unreadable(new LineCount(this.source).at(at), LONE);
+    }
     // saxes tells of a wrong end after it has closed the element.
     const open = said.startsWith('unexpected close tag') ? this.lastClosed : this.stack.at(-1);
     if (open && /^(?:unclosed tag|unexpected close tag|unexpected end)/.test(said)) {
@@ -152,6 +163,7 @@ class XmlWalk {
   }
 }
 
+const LONE = 'An “&” stands alone. Write &amp; where it belongs to the text.';
 const DOCTYPE =
   'It has a DOCTYPE, which can define entities, so it is not read. Remove the <!DOCTYPE …> and bring the file again.';
 
@@ -165,10 +177,7 @@ const WORDS: readonly (readonly [RegExp, string])[] = [
     /^malformed character entity/,
     'A character reference (&#…;) names no character that XML allows. Remove it.',
   ],
-  [
-    /^disallowed character in entity|^empty entity/,
-    'An “&” stands alone. Write &amp; where it belongs to the text.',
-  ],
+  [/^disallowed character in entity|^empty entity/, LONE],
   [
     /^disallowed character\./,
     'There is a character that XML does not allow (a control character, or “<” in a value). Remove it.',

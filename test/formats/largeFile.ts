@@ -28,6 +28,22 @@ const KINDS: Readonly<Record<string, () => void>> = {
     put('source,target\n');
     for (let k = 0; k < 1_900_000; k++) put(`"a\n${k % 50}","b\n${k % 7}"\n`);
   },
+  /** JSON on one line: 550,000 links among 5,000 nodes. */
+  links: () => {
+    const nodes = Array.from({ length: 5_000 }, (_, k) => `{"id":${k},"entry":${k}}`);
+    put(`{"nodes":[${nodes.join(',')}],"links":[{"source":0,"target":1}`);
+    for (let k = 1; k < 550_000; k++)
+      put(`,{"source":${k % 5_000},"target":${(k * 7_919 + 1) % 5_000}}`);
+    put(']}');
+  },
+  /** GraphML with an element a line: more than a million spaces of layout between 300,000 edges. */
+  layout: () => {
+    put('<graphml>\n  <graph edgedefault="undirected">\n');
+    for (let k = 0; k < 5_000; k++) put(`    <node id="n${k}"/>\n`);
+    for (let k = 0; k < 300_000; k++)
+      put(`    <edge source="n${k % 5_000}" target="n${(k * 7_919 + 1) % 5_000}">\n    </edge>\n`);
+    put('  </graph>\n</graphml>\n');
+  },
   /** A quote out of place in every line. */
   quotes: () => {
     for (let k = 0; k < 12_000_000; k++) put('a"b\n');

@@ -31,6 +31,8 @@ describe(`a large file is brought in, or refused, within ${HEAP} MB of heap`, ()
     ['edges', { nodes: 5000, edgeRows: 1_600_000, says: '' }],
     ['times', { nodes: 5000, edgeRows: 400_000, says: '' }],
     ['lines', { nodes: 57, edges: 350, edgeRows: 1_900_000, says: '' }],
+    ['links', { nodes: 5000, edgeRows: 550_000, says: '' }],
+    ['layout', { nodes: 5000, edgeRows: 300_000, says: '' }],
     ['quotes', { nodes: 0, says: expect.stringMatching(/inside a cell/) as unknown }],
     ['matrix', { nodes: 0, says: expect.stringMatching(/6126750 edges/) as unknown }],
   ])('%s', async (kind, expected) => {
