@@ -9,6 +9,7 @@ import type { RouteMap } from './http/route';
 import { importRoutes } from './imports/routes';
 import { memberRoutes } from './members/routes';
 import { modelRoutes } from './models/routes';
+import { revisionRoutes } from './revisions/routes';
 import { workspaceRoutes } from './workspaces/routes';
 
 /** The rows of the access table that server/runs answers. */
@@ -41,6 +42,7 @@ export function makeRoutes(
     ...memberRoutes(dependencies),
     ...datasetRoutes(dependencies),
     ...datasetLifeRoutes(dependencies),
+    ...revisionRoutes(dependencies),
     ...importRoutes(dependencies),
     ...modelRoutes(dependencies),
     ...groupRoutes(dependencies),

@@ -17,6 +17,7 @@ export interface RouteRule {
 
 const EVERYONE = ['owner', 'analyst', 'recorder', 'reviewer'] as const;
 const EDITORS = ['owner', 'analyst'] as const;
+const RECORDERS = ['owner', 'analyst', 'recorder'] as const;
 const OWNERS = ['owner'] as const;
 
 const W = '/api/workspaces/:workspaceId';
@@ -169,6 +170,30 @@ export const ROUTES = {
     path: `${W}/revisions/:revisionId`,
     access: EVERYONE,
     summary: 'Nodes and edges of a revision',
+  },
+  revisionDifference: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/difference`,
+    access: EVERYONE,
+    summary: 'What it has otherwise than the one before',
+  },
+  revisionWeights: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/weights`,
+    access: EVERYONE,
+    summary: 'How many edges each weight keeps',
+  },
+  thresholdRevision: {
+    method: 'post',
+    path: `${W}/revisions/:revisionId/threshold`,
+    access: EDITORS,
+    summary: 'A new revision of its heavier edges',
+  },
+  correctRevision: {
+    method: 'post',
+    path: `${W}/revisions/:revisionId/corrections`,
+    access: RECORDERS,
+    summary: 'A new revision with corrected entries',
   },
   runEstimate: {
     method: 'get',

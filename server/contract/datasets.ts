@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { importChoices, importFound, SOURCE_FORMATS, textReading } from './importChoices';
 import { entryUnitSchema, runPartSchema, runStateSchema, scaleSchema } from './enums';
+import { revisionOrigin } from './revisions';
 
 export const UPLOAD_LIMITS = {
   /** Bytes of one file. */
@@ -50,6 +51,8 @@ export const importReport = z.strictObject({
       found: importFound,
     })
     .optional(),
+  /** How the revision was made from another of its dataset, where it was. */
+  origin: revisionOrigin.optional(),
 });
 export type ImportReport = z.infer<typeof importReport>;
 

@@ -51,6 +51,6 @@ export function sameContent(number: number): Failure {
   return new Failure(
     'conflict',
     'revisions.same_content',
-    `The files hold exactly what revision ${number} holds, so there is nothing new to save.`,
+    `This is exactly what revision ${number} holds, so there is nothing new to save.`,
   );
 }

@@ -17,6 +17,7 @@ import {
   makeWorkspace,
   networkForm,
   NODES_CSV,
+  WEIGHTED_PATH,
   type MadeWorkspace,
 } from '../support/factories';
 
@@ -70,6 +71,9 @@ function samples(world: World): Record<RouteName, Sample> {
   const run = () => Promise.resolve({ runId: world.runId });
   const draft = async () => ({ importId: await makeImport(db, scope) });
   const fresh = async () => ({ datasetId: (await makeDataset(db, scope)).id });
+  const weighted = async () => ({
+    revisionId: (await makeDataset(db, scope, 'Weighted path', WEIGHTED_PATH)).revisionId,
+  });
   const member = async () => ({ userId: (await makeMember(db, scope, 'reviewer')).id });
   return {
     health: { status: 200 },
@@ -161,6 +165,24 @@ function samples(world: World): Record<RouteName, Sample> {
     revision: {
       status: 200,
       parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
+    revisionDifference: {
+      status: 200,
+      parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
+    revisionWeights: {
+      status: 200,
+      parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
+    thresholdRevision: {
+      status: 201,
+      parameters: weighted,
+      send: { method: 'POST', json: { least: 0.5 } },
+    },
+    correctRevision: {
+      status: 201,
+      parameters: weighted,
+      send: { method: 'POST', json: { corrections: [{ row: 0, entry: '1.5' }] } },
     },
     // The stored answer of the worker is a refusal.
     runEstimate: {

@@ -85,8 +85,19 @@ export const PATH_OF_THREE: ReadNetwork = {
   },
 };
 
-export async function makeDataset(db: Db, scope: Scope, name = 'Path of three') {
-  const id = await createDataset(db, scope, { name, description: '' }, PATH_OF_THREE);
+/** The same with edges of weight 0.25 and 0.75; invented. */
+export const WEIGHTED_PATH: ReadNetwork = {
+  ...PATH_OF_THREE,
+  weights: Float64Array.of(0.25, 0.75),
+};
+
+export async function makeDataset(
+  db: Db,
+  scope: Scope,
+  name = 'Path of three',
+  network = PATH_OF_THREE,
+) {
+  const id = await createDataset(db, scope, { name, description: '' }, network);
   const [revision] = await listRevisions(db, scope, [id]);
   if (revision === undefined) throw new Error('The dataset has no revision.');
   return { id, revisionId: revision.id };
