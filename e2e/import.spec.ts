@@ -259,7 +259,11 @@ for (const [theme, width] of [
     const { id } = await house.workspace('Steps');
     await signInPage.open();
     await signInPage.signIn(account);
-    await importPage.begin(id, two(NODES.replace('Cress,2', 'Cress,soon')));
+    await page.goto(`/workspaces/${id}/imports/new`);
+    await importPage.read.click();
+    await expect(page.getByText('Choose a file here, or paste rows below.')).toBeVisible();
+    expect(await violations(page), 'the beginning').toEqual([]);
+    await importPage.choose(two(NODES.replace('Cress,2', 'Cress,soon')));
     const stages = ['Files', 'Columns', 'Order', 'What was found', 'Save'];
     for (const [reading, order] of [
       ['wrong', 'The entry column'],

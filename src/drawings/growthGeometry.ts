@@ -97,7 +97,7 @@ export function growthGeometry(
       bandOf(curve, dimension, below + dimension * BAND, { place, right }),
     ),
     ...{ left, right, base, top, x, windows, words },
-    ticks: ticksOf(growth.entryUnit, [from, to], { place, left, right }),
+    ticks: ticksOf(growth, [from, to], { place, left, right }),
     curve: curveOf(x, edgesBy, { base, top, right }),
     arcs: shownArcs.map(([a, b]) => arcOf(x[a] ?? 0, x[b] ?? 0, line, right - left)),
   };
@@ -123,13 +123,16 @@ interface Axis {
 
 /** Round values from one end of the axis to the other, none so near the last that words would touch. */
 function ticksOf(
-  unit: ImportGrowth['entryUnit'],
+  { entryUnit: unit, entries }: ImportGrowth,
   [from, to]: readonly [number, number],
   { place, left, right }: Axis,
 ): AxisTick[] {
   const room = TICK[unit];
   const ticks: AxisTick[] = [];
+  // Between whole numbers and whole days nothing arrives.
+  const whole = entries.every(Number.isInteger);
   for (const value of roundValues(unit, from, to, Math.max(1, (right - left) / room / 1.5))) {
+    if (whole && !Number.isInteger(value)) continue;
     const x = place(value);
     const wordsX = Math.min(Math.max(x, left + room / 2), right - room / 2);
     if (wordsX - (ticks.at(-1)?.wordsX ?? -Infinity) >= room) ticks.push({ x, value, wordsX });
@@ -143,7 +146,7 @@ function roundValues(unit: ImportGrowth['entryUnit'], from: number, to: number, 
   if (unit === 'number') return scaleLinear([from, to], [0, 1]).ticks(about);
   const length = UNIT[unit];
   const times = scaleUtc([from * length, to * length], [0, 1]).ticks(about);
-  return times.map((time) => time.getTime() / length).filter(Number.isInteger);
+  return times.map((time) => time.getTime() / length);
 }
 
 /** Windows from the earliest beginning on, each in the first lane with room. */

@@ -48,6 +48,8 @@ describe('the drawing of a growth', () => {
     const round = growthGeometry(growth({ entries: [0, 7, 100] }), 600);
     expect(round.ticks.map(({ value }) => value)).toEqual([0, 20, 40, 60, 80, 100]);
     expect(round.ticks.at(-1)!.x).toBe(round.right);
+    const few = growthGeometry(growth({ entries: [1, 2, 3] }), 600);
+    expect(few.ticks.map(({ value }) => value)).toEqual([1, 2, 3]);
     const days = growthGeometry(growth({ entryUnit: 'days', entries: [22312, 22330, 22400] }), 600);
     expect(days.ticks.length).toBeGreaterThan(1);
     for (const { value } of days.ticks) {

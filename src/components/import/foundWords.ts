@@ -18,7 +18,8 @@ export function foundLines(draft: ImportDraft): FoundLine[] {
   };
   const always = { shown: true };
   const rows = (count: number): string => `from ${formatNoun(count, 'row')}`;
-  say(found.nodes, 'Nodes', rows(found.nodeRows), always);
+  const named = found.nodeRows === 0 && found.nodes > 0;
+  say(found.nodes, 'Nodes', named ? 'named by the edges' : rows(found.nodeRows), always);
   say(found.edges, 'Edges', rows(found.edgeRows), always);
   say(found.components, 'Components', 'parts without an edge between them', always);
   say(found.isolated, 'Nodes without an edge', 'kept; each is a component');
@@ -34,12 +35,9 @@ export function foundLines(draft: ImportDraft): FoundLine[] {
   say(found.reversed, 'Edges in both directions', 'folded into one; direction is ignored');
   say(found.differingWeights, 'Repeated edges of different weight', 'the largest weight was kept');
   say(found.repeatedLabels, 'Nodes with the label of another', 'kept apart by their ids', always);
-  say(
-    found.nodesOnlyInEdges,
-    'Nodes named only by edges',
-    'no row of the node table has their id',
-    always,
-  );
+  say(found.nodesOnlyInEdges, 'Nodes named only by edges', 'no row of the nodes has their id', {
+    shown: !named,
+  });
   // While dates cannot be read, those that are there count as missing.
   if (!awaitsDayOrder(draft))
     say(found.nodesWithoutEntry, 'Nodes without an entry', missingMeaning(draft), always);
