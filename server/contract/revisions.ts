@@ -46,20 +46,21 @@ export const thresholdRequest = z.strictObject({
 });
 export type ThresholdRequest = z.infer<typeof thresholdRequest>;
 
-/** POST …/revisions/:revisionId/corrections: entries as they should have been written. */
+/** One entry as it should have been written. */
+export const correctionFields = z.strictObject({
+  /** Row of the node in the revision. */
+  row: z.number('Choose a node.').int('Choose a node.').nonnegative('Choose a node.'),
+  entry: z.string().trim().min(1, 'Write when the node arrived.').max(300),
+  /** Left out, an end stays; empty, it is open. */
+  earliest: z.string().trim().max(300).optional(),
+  latest: z.string().trim().max(300).optional(),
+  note: z.string().trim().max(2000).default(''),
+});
+
+/** POST …/revisions/:revisionId/corrections. */
 export const correctionsRequest = z.strictObject({
   corrections: z
-    .array(
-      z.strictObject({
-        /** Row of the node in the revision. */
-        row: z.number('Choose a node.').int('Choose a node.').nonnegative('Choose a node.'),
-        entry: z.string().trim().min(1, 'Write when the node arrived.').max(300),
-        /** Left out, an end stays; empty, it is open. */
-        earliest: z.string().trim().max(300).optional(),
-        latest: z.string().trim().max(300).optional(),
-        note: z.string().trim().max(2000).default(''),
-      }),
-    )
+    .array(correctionFields)
     .min(1, 'Name at least one node.')
     .max(MOST_CORRECTIONS, `Correct at most ${MOST_CORRECTIONS} nodes at once.`),
 });
