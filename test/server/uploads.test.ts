@@ -41,10 +41,20 @@ describe('a network that is right', () => {
     const id = saved.revisions[0]?.id ?? '';
     const read = (await up.owner.get(`${up.workspacePath}/revisions/${id}`)).read(revision);
     expect(read.edges).toEqual([[0, 1]]);
+    const noWindow = { earliest: null, earliestRaw: '', latest: null, latestRaw: '' };
     expect(read.nodes).toEqual([
-      { id: 'a', label: 'Ä', entryRaw: '1.5', entry: 1.5, earliest: 1, latest: 2 },
-      { id: 'b', label: 'b', entryRaw: '1.5', entry: 1.5, earliest: null, latest: null },
-      { id: 'c', label: 'c', entryRaw: '-3', entry: -3, earliest: null, latest: null },
+      {
+        id: 'a',
+        label: 'Ä',
+        entryRaw: '1.5',
+        entry: 1.5,
+        earliest: 1,
+        earliestRaw: '1',
+        latest: 2,
+        latestRaw: '2',
+      },
+      { id: 'b', label: 'b', entryRaw: '1.5', entry: 1.5, ...noWindow },
+      { id: 'c', label: 'c', entryRaw: '-3', entry: -3, ...noWindow },
     ]);
   });
 
