@@ -3,8 +3,11 @@ import { partnersOf, type Partners } from './part';
 import type { Prepared } from './prepared';
 import type { PairChoice } from './types';
 
-/** A short run is still dealt in so many blocks, so that two threads share it and it shows progress. */
-const LEAST_BLOCKS = 8;
+/**
+ * A block takes this part of what is left to deal (guided self-scheduling: Polychronopoulos and Kuck
+ * 1987), so that the last ones are small and several threads or workers end together.
+ */
+const SHARE_OF_REST = 1 / 16;
 /** Seconds below which a block is not worth its dispatch. */
 const LEAST_SECONDS = 0.08;
 
@@ -30,10 +33,10 @@ export function planBlocks(prepared: Prepared, secondsPerBlock: number): Uint32A
 
 /**
  * Deals the rows of a part into blocks by estimated cost, longest first (Graham, Bounds on
- * multiprocessing timing anomalies, 1969). Depends only on the network, D and the part, never on the
- * machine.
+ * multiprocessing timing anomalies, 1969), in ever smaller blocks. Depends only on the network, D and
+ * the part, never on the machine.
  *
- * @param secondsPerBlock what a block should take; a longer row is a block of its own
+ * @param secondsPerBlock what a block should take at most; a longer row is a block of its own
  * @returns blocks that hold every pair of the part exactly once
  */
 export function planPairs(
@@ -43,8 +46,7 @@ export function planPairs(
 ): Block[] {
   const cost = costOf(counts);
   const seconds = Float64Array.from({ length: nodeCount }, (_, p) => cost.of(p, partners.of(p)));
-  const total = seconds.reduce((sum, one) => sum + one, 0);
-  const target = Math.min(secondsPerBlock, Math.max(LEAST_SECONDS, total / LEAST_BLOCKS));
+  let rest = seconds.reduce((sum, one) => sum + one, 0);
   const rows = Array.from(seconds.keys()).filter((p) => seconds[p]! > 0);
   rows.sort((p, q) => seconds[q]! - seconds[p]! || p - q);
   const blocks: Block[] = [];
@@ -52,9 +54,11 @@ export function planPairs(
   let held = 0;
   const close = () => {
     blocks.push(blockOf(Uint32Array.from(block), partners, held));
+    rest -= held;
     [block, held] = [[], 0];
   };
   for (const p of rows) {
+    const target = Math.min(secondsPerBlock, Math.max(LEAST_SECONDS, SHARE_OF_REST * rest));
     if (block.length > 0 && held + seconds[p]! > target) close();
     block.push(p);
     held += seconds[p]!;

@@ -1,7 +1,7 @@
 import type { Budget } from './budget';
 import type { Level } from './levels';
 import type { Pulse } from './pulse';
-import { rowOfUnion, type Star, type StarOrder } from './stars';
+import { rowOfUnion, sortBy, type Star, type StarOrder } from './stars';
 
 /**
  * The simplices x + sigma of one dimension that may be critical columns of x's star: those that are
@@ -115,46 +115,97 @@ export function starCandidates(
   below: { star: Star; unions: UnionSummary },
   budget: Budget,
 ): StarCandidates {
-  const kinds: number[][] = [[], []];
-  const elders: number[][] = [[], []];
-  const belowNodes = levels[d - 1]!.nodes;
-  for (let g = 0; g < order.entry.length; g++) {
-    const kind = unions.count[g]!;
-    if (kind === 2) continue;
-    let elder = -1;
-    if (d > 1) {
-      const union = order.entry[g]!;
-      const row = rowOfUnion(levels, d - 1, union);
-      const place = below.star.start[belowNodes[row]!]! + below.star.local[row]!;
-      if (below.star.firstUnion[place] === union) continue;
-      if (below.star.secondUnion[place] === union) elder = below.unions.node[place]!;
-    }
-    kinds[kind]!.push(g);
-    elders[kind]!.push(elder);
-  }
-  const build = (kind: number, ranks: Int32Array): StarColumns =>
-    gather(levels, d, order, { places: kinds[kind]!, elders: elders[kind]!, ranks }, budget);
-  const single = kinds[1]!;
-  const { nodes } = levels[d]!;
-  const ranks = Int32Array.from({ length: single.length }, (_, i) => i);
-  const owner = (i: number) => nodes[order.entry[single[i]!]!]!;
-  const added = (i: number) => unions.node[single[i]!]!;
-  ranks.sort((i, j) => owner(i) - owner(j) || added(i) - added(j) || i - j);
-  const singleNode = budget.int32(single.length);
-  ranks.forEach((i, k) => (singleNode[k] = added(i)));
-  const identity = Int32Array.from({ length: kinds[0]!.length }, (_, i) => i);
-  return { free: build(0, identity), single: build(1, ranks), singleNode };
+  const rule = d === 1 ? NO_RULE : firstUnionRule(levels, d, order, below);
+  const placesOf = (kind: number) => placesWith(kind, unions, rule, order, budget);
+  const build = (places: Int32Array) => gather(levels, d, order, { places, rule }, budget);
+  const places = placesOf(0);
+  const free = build(places);
+  budget.release(places);
+  const inOrder = placesOf(1);
+  const sorted = sortByNodes(inOrder, levels[d]!, order, unions, budget);
+  const singleNode = budget.int32(sorted.length);
+  sorted.forEach((g, k) => (singleNode[k] = unions.node[g]!));
+  const single = build(sorted);
+  budget.release(inOrder);
+  budget.release(sorted);
+  return { free, single, singleNode };
+}
+
+/** Places with one union by (node x, node that the union adds, place): two counting sorts. */
+function sortByNodes(
+  places: Int32Array,
+  { nodes }: Level,
+  { start, entry }: StarOrder,
+  unions: UnionSummary,
+  budget: Budget,
+): Int32Array {
+  const nodeCount = start.length - 1;
+  const byAdded = budget.int32(places.length);
+  const sorted = budget.int32(places.length);
+  sortBy(
+    nodeCount,
+    places.map((g) => unions.node[g]!),
+    undefined,
+    byAdded,
+  );
+  sortBy(
+    nodeCount,
+    places.map((g) => nodes[entry[g]!]!),
+    byAdded,
+    sorted,
+  );
+  budget.release(byAdded);
+  for (let k = 0; k < sorted.length; k++) sorted[k] = places[sorted[k]!]!;
+  return sorted;
+}
+
+/** `PAIRED` where x + sigma is the first union of its facet, else its `elder`. */
+type FirstUnionRule = (place: number) => number;
+const PAIRED = -2;
+const NO_RULE: FirstUnionRule = () => -1;
+
+function firstUnionRule(
+  levels: readonly Level[],
+  d: number,
+  order: StarOrder,
+  { star, unions }: { star: Star; unions: UnionSummary },
+): FirstUnionRule {
+  const { nodes } = levels[d - 1]!;
+  return (g) => {
+    const union = order.entry[g]!;
+    const row = rowOfUnion(levels, d - 1, union);
+    const place = star.start[nodes[row]!]! + star.local[row]!;
+    if (star.firstUnion[place] === union) return PAIRED;
+    return star.secondUnion[place] === union ? unions.node[place]! : -1;
+  };
+}
+
+/** Places, ascending, with so many unions that are not paired as the first union of their facet. */
+function placesWith(
+  kind: number,
+  unions: UnionSummary,
+  rule: FirstUnionRule,
+  { entry }: StarOrder,
+  budget: Budget,
+): Int32Array {
+  const isMeant = (g: number) => unions.count[g] === kind && rule(g) !== PAIRED;
+  let count = 0;
+  for (let g = 0; g < entry.length; g++) if (isMeant(g)) count++;
+  const places = budget.int32(count);
+  count = 0;
+  for (let g = 0; g < entry.length; g++) if (isMeant(g)) places[count++] = g;
+  return places;
 }
 
 function gather(
   levels: readonly Level[],
   d: number,
   order: StarOrder,
-  chosen: { places: readonly number[]; elders: readonly number[]; ranks: Int32Array },
+  { places, rule }: { places: Int32Array; rule: FirstUnionRule },
   budget: Budget,
 ): StarColumns {
   const { nodes, facets } = levels[d]!;
-  const count = chosen.ranks.length;
+  const count = places.length;
   const nodeCount = order.start.length - 1;
   const start = budget.int32(nodeCount + 1);
   const entry = budget.int32(count);
@@ -163,15 +214,14 @@ function gather(
   const local = budget.none(count);
   const elder = budget.int32(count);
   for (let k = 0; k < count; k++) {
-    const i = chosen.ranks[k]!;
-    const g = chosen.places[i]!;
+    const g = places[k]!;
     const x = nodes[order.entry[g]!]!;
     start[x + 1]!++;
     entry[k] = order.entry[g]!;
     sigma[k] = facets[entry[k]!]!;
     latest[k] = order.latest[g]!;
     local[k] = g - order.start[x]!;
-    elder[k] = chosen.elders[i]!;
+    elder[k] = rule(g);
   }
   for (let x = 0; x < nodeCount; x++) start[x + 1]! += start[x]!;
   return { start, entry, sigma, latest, local, elder };

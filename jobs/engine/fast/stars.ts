@@ -28,13 +28,16 @@ export interface Star {
 /** The stars' order alone: what the top dimension, which has no rows, needs. */
 export type StarOrder = Pick<Star, 'start' | 'entry' | 'latest'>;
 
-/** Stable counting sort of `items` (all 0..n-1 if omitted) by key[item] in 0..keyCount-1. */
-function sortBy(
+/**
+ * Stable counting sort of `items` (all 0..n-1 if omitted) by key[item] in 0..keyCount-1.
+ * @returns where each key begins in `out`
+ */
+export function sortBy(
   keyCount: number,
   keys: Int32Array,
   items: Int32Array | undefined,
   out: Int32Array,
-) {
+): Int32Array {
   const start = new Int32Array(keyCount + 1);
   for (let i = 0; i < keys.length; i++) start[keys[i]! + 1]!++;
   for (let k = 0; k < keyCount; k++) start[k + 1]! += start[k]!;
