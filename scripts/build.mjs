@@ -19,6 +19,7 @@ const ENTRIES = {
   thread: 'jobs/pool/thread.ts',
   matrix: 'jobs/matrix.ts',
   bench: 'jobs/benchmark/main.ts',
+  benchMemory: 'jobs/benchmark/memory/child.ts',
   firstForm: 'jobs/benchmark/firstForm/thread.ts',
   seed: 'server/seed.ts',
   migrate: 'db/migrate.ts',

@@ -47,8 +47,8 @@ async function printGrowth({ name, sizes, network }: Family, options: Options): 
   const points: { size: number; time: number }[] = [];
   for (const size of sizes) {
     if (expected(points, size) > options['growth-seconds']) break;
-    const own = await matrixTimes(pool, network(size), options.dimension, options.repeats);
-    points.push({ size, time: median(own.seconds) });
+    const [own] = await matrixTimes(pool, network(size), [options.dimension], options.repeats);
+    points.push({ size, time: median(own!) });
   }
   await pool.close();
   const list = points.map(({ size, time }) => `n = ${size}: ${seconds(time)}`).join(', ');

@@ -4,25 +4,28 @@ import { median, megabytes, seconds, spread, times } from './figures';
 import { benchGraphs } from './graphs';
 import type { Options } from './options';
 import { gudhiSeconds, ripserSeconds, sampleSwaps, type GudhiTimes } from './outside';
-import { LIMITS, matrixTimes, poolOf, warmUp, type MatrixTimes } from './poolRuns';
+import { memoryOf, type Memory } from './memory/memoryOf';
+import { LIMITS, matrixTimes, poolOf, warmUp } from './poolRuns';
 
 const QUIET: Control = { shouldStop: () => false, onProgress: () => undefined };
 
 export const pairsOf = ({ nodeCount }: Network): number => (nodeCount * (nodeCount - 1)) / 2;
 
-/** By highest dimension, the largest first. */
-type OwnTimes = readonly { readonly dimension: number; readonly times: MatrixTimes }[];
+/** Seconds of the repetitions by highest dimension, the largest first. */
+type OwnTimes = readonly { readonly dimension: number; readonly seconds: readonly number[] }[];
 
 /** Every dimension from D down to 1 on one warm pool. */
 async function ownTimes(network: Network, threads: number, options: Options): Promise<OwnTimes> {
   const pool = poolOf(threads);
   await warmUp(pool);
-  const own: { dimension: number; times: MatrixTimes }[] = [];
-  for (let d = options.dimension; d >= Math.min(1, options.dimension); d--) {
-    own.push({ dimension: d, times: await matrixTimes(pool, network, d, options.repeats) });
-  }
+  const least = Math.min(1, options.dimension);
+  const dimensions = Array.from(
+    { length: options.dimension - least + 1 },
+    (_, i) => options.dimension - i,
+  );
+  const seconds = await matrixTimes(pool, network, dimensions, options.repeats);
   await pool.close();
-  return own;
+  return dimensions.map((dimension, i) => ({ dimension, seconds: seconds[i]! }));
 }
 
 /** Whole-matrix times of one and two threads, and sampled swaps of GUDHI and ripser beside them. */
@@ -30,8 +33,9 @@ export async function matrixSection(options: Options): Promise<void> {
   const { graphs, dimension } = options;
   console.log(
     `\n# Whole matrices, D = ${dimension}, distances and Betti gaps included\n` +
-      'Plan, tables and all pairs through a warm pool; median (least–most) of the repetitions. Peak: ' +
-      'most resident memory of the whole process. Outside programs: the median swap of a sample times ' +
+      'Plan, tables and all pairs through a warm pool; median (least–most) of the repetitions. Memory: ' +
+      'most bytes of the tables and columns, shared ones once; most resident memory of a process that ' +
+      'computes this matrix alone, and in brackets before it. Outside programs: the median swap of a sample times ' +
       'the number of pairs; ratio to one thread at that median (at the quickest–slowest swap). GUDHI ' +
       'with its own bottleneck distance, the better of plain and edge-collapsed; ripser net of its ' +
       'start, barcodes only.',
@@ -44,8 +48,9 @@ export async function matrixSection(options: Options): Promise<void> {
     const two = await ownTimes(network, 2, options);
     console.log(`\n${name}: ${pairsOf(network).toLocaleString('en')} pairs`);
     printOwn(one, two);
+    for (const threads of [1, 2]) printMemory(threads, memoryOf(name, dimension, threads));
     printLower(name, one, two, totals.slower);
-    printOutside(network, median(one[0]!.times.seconds), options);
+    printOutside(network, median(one[0]!.seconds), options);
   }
   if (dimension > 1) {
     const { slower } = totals;
@@ -58,11 +63,17 @@ export async function matrixSection(options: Options): Promise<void> {
 }
 
 function printOwn([one]: OwnTimes, [two]: OwnTimes): void {
-  const [a, b] = [one!.times, two!.times];
+  const [a, b] = [one!.seconds, two!.seconds];
   console.log(
-    `  1 thread ${spread(a.seconds, seconds)}, peak ${megabytes(a.bytes)}; ` +
-      `2 threads ${spread(b.seconds, seconds)}, peak ${megabytes(b.bytes)}: ` +
-      `${times(median(a.seconds) / median(b.seconds))} as fast`,
+    `  1 thread ${spread(a, seconds)}; 2 threads ${spread(b, seconds)}: ` +
+      `${times(median(a) / median(b))} as fast`,
+  );
+}
+
+function printMemory(threads: number, { counted, resident, idle }: Memory): void {
+  console.log(
+    `  memory, ${threads} thread(s): tables and columns ${megabytes(counted)}, ` +
+      `process ${megabytes(resident)} (${megabytes(idle)} idle)`,
   );
 }
 
@@ -71,19 +82,17 @@ function printLower(name: string, one: OwnTimes, two: OwnTimes, slower: string[]
   const parts: string[] = [];
   for (let i = 1; i < one.length; i++) {
     const { dimension } = one[i]!;
-    const [a, b] = [one[i]!.times, two[i]!.times];
-    parts.push(
-      `D = ${dimension}: ${seconds(median(a.seconds))}, ${seconds(median(b.seconds))}, ${megabytes(a.bytes)}`,
-    );
+    const [a, b] = [one[i]!.seconds, two[i]!.seconds];
+    parts.push(`D = ${dimension}: ${seconds(median(a))}, ${seconds(median(b))}`);
     for (const [threads, own] of [one, two].entries()) {
-      const [more, fewer] = [own[0]!.times.seconds, own[i]!.times.seconds];
+      const [more, fewer] = [own[0]!.seconds, own[i]!.seconds];
       if (median(fewer) <= median(more)) continue;
       const apart =
         Math.min(...fewer) > Math.max(...more) ? '' : ', within the repetitions’ spread';
       slower.push(`${name}, D = ${dimension}, ${threads + 1} thread(s)${apart}`);
     }
   }
-  if (parts.length > 0) console.log(`  1 and 2 threads, peak of 1: ${parts.join('; ')}`);
+  if (parts.length > 0) console.log(`  1 and 2 threads: ${parts.join('; ')}`);
 }
 
 function printOutside(network: Network, own: number, options: Options): void {

@@ -5,7 +5,6 @@ import type { Limits, Network } from '../engine/types';
 import { openPool, type Pool } from '../pool/pool';
 import type { Outcome, Subject } from '../pool/tasks';
 import { constantProbability } from './graphs';
-import { beginPeak, peakBytes } from './peakMemory';
 
 export const LIMITS: Limits = { simplices: 200_000_000, bytes: 8 * 2 ** 30 };
 /** As the worker plans, unless it is told otherwise. */
@@ -38,24 +37,30 @@ function resultOf<R>(outcome: Outcome<R>): R {
   return outcome.result;
 }
 
-/** The whole matrix as a worker computes it, plan and tables included; returns its seconds. */
+export interface MatrixRun {
+  readonly seconds: number;
+  /** Most bytes of the engine's typed arrays on any thread, shared tables included. */
+  readonly bytes: number;
+}
+
+/** The whole matrix as a worker computes it, plan and tables included. */
 export async function wholeMatrix(
   pool: Pool,
   network: Network,
   maxDimension: number,
-): Promise<number> {
+): Promise<MatrixRun> {
   const subject = freshSubject(network, maxDimension);
   const start = performance.now();
   const plan = { secondsPerBlock: SECONDS_PER_BLOCK, part: { kind: 'whole' } as const };
   const { blocks } = resultOf(
     await pool.run<'plan'>({ kind: 'plan', subject, stored: null, ...plan }, never),
   );
-  await Promise.all(
-    blocks.map(async ({ rows }) =>
-      resultOf(await pool.run<'rows'>({ kind: 'rows', subject, rows }, never)),
-    ),
+  const outcomes = await Promise.all(
+    blocks.map(({ rows }) => pool.run<'rows'>({ kind: 'rows', subject, rows }, never)),
   );
-  return secondsSince(start);
+  outcomes.forEach(resultOf);
+  const bytes = outcomes.map((one) => (one.kind === 'finished' ? (one.bytes ?? 0) : 0));
+  return { seconds: secondsSince(start), bytes: Math.max(0, ...bytes) };
 }
 
 /** The rows, each a task, in the order given; returns their seconds. */
@@ -70,9 +75,11 @@ export async function someRows(pool: Pool, subject: Subject, rows: Uint32Array):
 
 const warmUpNetwork = (seed: number): Network => constantProbability(60, 0.4, 100 + seed);
 
-/** Lets all threads of the engine compile their code on small matrices. */
+/** Lets all threads of the engine compile their code on small matrices of every dimension. */
 export async function warmUp(pool: Pool): Promise<void> {
-  for (let seed = 0; seed < 3; seed++) await wholeMatrix(pool, warmUpNetwork(seed), 3);
+  for (let seed = 0; seed < 3; seed++) {
+    for (let d = 3; d >= 1; d--) await wholeMatrix(pool, warmUpNetwork(seed), d);
+  }
 }
 
 /** The same for threads that know rows only. */
@@ -84,28 +91,33 @@ export async function warmUpRows(pool: Pool): Promise<void> {
   }
 }
 
-export interface MatrixTimes {
-  /** Seconds of each repetition. */
-  readonly seconds: number[];
-  /** Most resident bytes of the process during the first one. */
-  readonly bytes: number;
-}
+/** Seconds that the repetitions of a matrix may take together, and that short ones are to take. */
+const LONG = 60;
+const SHORT = 2;
+/** Repetitions of a short matrix, of each given one. */
+const MORE = 5;
 
-/** A matrix several times; a long one is not repeated. */
+/**
+ * Seconds of the whole matrices of several dimensions, in turns, so that whatever else the machine
+ * does meets all of them. A long one is not repeated, a short one more often.
+ */
 export async function matrixTimes(
   pool: Pool,
   network: Network,
-  maxDimension: number,
+  dimensions: readonly number[],
   repeats: number,
-): Promise<MatrixTimes> {
-  beginPeak();
-  const seconds = [await wholeMatrix(pool, network, maxDimension)];
-  const bytes = peakBytes();
-  while (seconds.length < repeats && seconds[0]! * repeats < LONG) {
-    seconds.push(await wholeMatrix(pool, network, maxDimension));
+): Promise<number[][]> {
+  const seconds = dimensions.map((): number[] => []);
+  for (let round = 0; isWorthwhile(seconds[0]!, round, repeats); round++) {
+    for (const [i, d] of dimensions.entries()) {
+      seconds[i]!.push((await wholeMatrix(pool, network, d)).seconds);
+    }
   }
-  return { seconds, bytes };
+  return seconds;
 }
 
-/** Seconds that the repetitions of a matrix may take together. */
-const LONG = 60;
+function isWorthwhile(own: readonly number[], round: number, repeats: number): boolean {
+  if (round === 0) return true;
+  if (round < repeats) return own[0]! * repeats < LONG;
+  return round < MORE * repeats && own.reduce((sum, one) => sum + one, 0) < SHORT;
+}

@@ -66,7 +66,7 @@ async function overHttp(bench: Bench, name: string, network: Network): Promise<v
   const engine: number[] = [];
   const runs: WatchedRun[] = [];
   for (let i = 0; i < bench.options.runs; i++) {
-    engine.push(await wholeMatrix(bench.bare, network, 3));
+    engine.push((await wholeMatrix(bench.bare, network, 3)).seconds);
     runs.push(await watched(bench, network));
   }
   const whole = runs.map((run) => run.whole);
@@ -91,7 +91,7 @@ async function inBrowser(bench: Bench, origin: string): Promise<void> {
       const engine: number[] = [];
       const runs: PaintedRun[] = [];
       for (let i = 0; i < bench.options.runs; i++) {
-        engine.push(await wholeMatrix(bench.bare, network, 3));
+        engine.push((await wholeMatrix(bench.bare, network, 3)).seconds);
         const { datasetId } = await upload(bench, network);
         const path = `${origin}/workspaces/${bench.visitor.workspaceId}/datasets/${datasetId}`;
         runs.push(await paintRun(page, path));

@@ -98,8 +98,16 @@ export type ResultOf<K extends Task['kind']> = K extends 'prepare'
 
 /** Errors do not keep their class on the way out of a thread: the outcome says what happened. */
 export type Outcome<R> =
-  /** `seconds` is what a thread spent on it. */
-  | { readonly kind: 'finished'; readonly result: R; readonly seconds?: number }
+  /**
+   * `seconds` is what a thread spent on it; `bytes` the most that the engine's typed arrays for the
+   * subject have taken at once, shared tables and their making included.
+   */
+  | {
+      readonly kind: 'finished';
+      readonly result: R;
+      readonly seconds?: number;
+      readonly bytes?: number;
+    }
   | { readonly kind: 'stopped' }
   /** The input or its size is at fault; the message is a plain sentence. */
   | { readonly kind: 'refused'; readonly code: string; readonly message: string }

@@ -103,7 +103,8 @@ export default function work(task: Task): Outcome<ResultOf<Task['kind']>> {
   const from = performance.now();
   try {
     const result = run(task, controlOf(task, from));
-    return { kind: 'finished', result, seconds: (performance.now() - from) / 1000 };
+    const seconds = (performance.now() - from) / 1000;
+    return { kind: 'finished', result, seconds, bytes: kept.get(task.subject.key)?.peakBytes ?? 0 };
   } catch (error) {
     if (error instanceof EngineStopped) {
       return task.timeLimit && isLate(task, from)

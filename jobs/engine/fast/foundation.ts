@@ -22,6 +22,8 @@ export interface FoundationData {
   readonly links: readonly (LinkColumns | undefined)[];
   readonly settled: readonly (SettledColumns | undefined)[];
   readonly bytes: number;
+  /** Most bytes held at once while it was laid. */
+  readonly peak: number;
   readonly zeroTests: ZeroTests;
 }
 
@@ -96,6 +98,7 @@ export function foundationData(foundation: Foundation): FoundationData {
     links,
     settled,
     bytes,
+    peak: tables.budget.peak,
     zeroTests,
   };
 }
@@ -107,6 +110,7 @@ export function foundationData(foundation: Foundation): FoundationData {
 export function adoptFoundation(data: FoundationData, limits: Limits): Foundation {
   const budget = new Budget(limits);
   budget.take(data.bytes);
+  budget.peak = data.peak;
   const tables = { ...data.tables, budget };
   const store = new IntPool(budget, data.store.length + 1024);
   store.data.set(data.store);
