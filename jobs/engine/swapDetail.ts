@@ -1,11 +1,13 @@
 import { bettiGap } from './bettiCurve';
 import { optimalMatching, type Matching } from './bottleneck';
 import { changedBars, recordedBars } from './fast/foundation';
+import { movedCycles } from './movedCycles';
 import type { Prepared } from './prepared';
 import { EngineInputError, type PairDetail } from './types';
 
 /**
- * One swap in full: both barcodes and, per dimension, an optimal bottleneck matching of them.
+ * One swap in full: both barcodes and, per dimension, an optimal bottleneck matching of them and a
+ * cycle of every bar that moves.
  * @param p, q arrival positions, p < q
  * @throws EngineInputError for positions that are no pair; EngineLimitError
  */
@@ -29,6 +31,11 @@ export function swapDetail(prepared: Prepared, p: number, q: number): PairDetail
     swapped,
     matchings: matchings.map(({ matches }) => matches),
     realising: matchings.map(realisingMatch),
+    cycles: movedCycles(
+      prepared,
+      { p, q },
+      matchings.map(({ matches }) => matches),
+    ),
   };
 }
 

@@ -92,6 +92,23 @@ export interface BarMatch {
   readonly cost: number;
 }
 
+/** A cycle that stands for a bar, one of many. */
+export interface BarCycle {
+  /** Index into the barcode of its side and dimension k. */
+  readonly bar: number;
+  /**
+   * Its k-simplices as arrival positions of the recorded order, k + 1 each; in dimension 0 the node
+   * that is born and the one it is joined to. Null where it is too long to find or to show.
+   */
+  readonly simplices: Int32Array | null;
+}
+
+/** Cycles of the moved bars of one dimension, those that cost most first. */
+export interface MovedCycles {
+  readonly recorded: readonly BarCycle[];
+  readonly swapped: readonly BarCycle[];
+}
+
 /** Everything about one swap, for the reader who clicked on it. */
 export interface PairDetail {
   /** Arrival positions, p < q. */
@@ -106,6 +123,8 @@ export interface PairDetail {
   readonly matchings: readonly (readonly BarMatch[])[];
   /** Per dimension the index in `matchings[k]` of a match whose cost is the distance, or -1 if the distance is 0. */
   readonly realising: readonly number[];
+  /** Per dimension. */
+  readonly cycles: readonly MovedCycles[];
 }
 
 /** What the matrix of a part would need, counted before it is run. */

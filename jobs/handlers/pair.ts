@@ -1,6 +1,6 @@
 import { answerPair, claimPair } from '../../db/repositories/pairDetails';
 import { describe } from '../../db/repositories/runWork';
-import type { Barcode } from '../engine/types';
+import type { BarCycle, Barcode } from '../engine/types';
 import type { PairResult } from '../pool/tasks';
 import type { Payload } from '../queue/jobs';
 import type { Context } from './context';
@@ -57,6 +57,17 @@ const barsOf = (barcode: Barcode) =>
     }),
   );
 
+/** Simplices as lists of positions; in dimension 0 each is a node. */
+const cyclesOf = (cycles: readonly BarCycle[], k: number) =>
+  cycles.map(({ bar, simplices }) => ({
+    bar,
+    simplices:
+      simplices &&
+      Array.from({ length: simplices.length / (k + 1) }, (_, i) =>
+        Array.from(simplices.subarray(i * (k + 1), (i + 1) * (k + 1))),
+      ),
+  }));
+
 /** As stored in pair_details.detail: lists instead of typed arrays, null for Infinity. */
 const wire = ({ detail, similarity }: PairResult) => ({
   bound: detail.bound,
@@ -69,4 +80,8 @@ const wire = ({ detail, similarity }: PairResult) => ({
     matching.map(({ recorded, swapped, cost }) => [recorded, swapped, cost]),
   ),
   realising: detail.realising,
+  cycles: detail.cycles.map(({ recorded, swapped }, k) => ({
+    recorded: cyclesOf(recorded, k),
+    swapped: cyclesOf(swapped, k),
+  })),
 });

@@ -147,6 +147,17 @@ export type WireBars = z.infer<typeof barsSchema>;
 export const recordedBarcode = z.strictObject({ bars: z.array(barsSchema) });
 export type RecordedBarcode = z.infer<typeof recordedBarcode>;
 
+/**
+ * One cycle of many that stands for a bar: its simplices as node rows, the bar's dimension + 1 each (in
+ * dimension 0 the node that is born and the one it is joined to); null where it is too long to show.
+ */
+export const barCycle = z.strictObject({
+  /** Index in the barcode of its side. */
+  bar: z.number().int(),
+  simplices: z.array(z.array(z.number().int())).nullable(),
+});
+export type BarCycle = z.infer<typeof barCycle>;
+
 /** GET …/runs/:run/pairs/:a/:b with node rows a and b. */
 export const pairDetail = z.strictObject({
   /** Node rows. `a` arrives first. */
@@ -166,6 +177,8 @@ export const pairDetail = z.strictObject({
       matching: z.array(z.tuple([z.number().int(), z.number().int(), z.number()])),
       /** Index in `matching` of a match that costs the distance, or -1. */
       realising: z.number().int(),
+      /** Cycles of the bars that move, those that cost most first; at most 40 a side. */
+      cycles: z.strictObject({ recorded: z.array(barCycle), swapped: z.array(barCycle) }),
     }),
   ),
 });

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { barsSchema, type PairDetail } from '#contract/runs';
+import { barCycle, barsSchema, type BarCycle, type PairDetail } from '#contract/runs';
 import type { Db } from '../../db/client';
 import type { Listener } from '../../db/listener';
 import {
@@ -31,6 +31,10 @@ const storedDetail = z.object({
   swapped: z.array(barsSchema),
   matchings: z.array(z.array(z.tuple([z.number().int(), z.number().int(), z.number()]))),
   realising: z.array(z.number().int()),
+  // Details that were stored before cycles were have none.
+  cycles: z
+    .array(z.object({ recorded: z.array(barCycle), swapped: z.array(barCycle) }))
+    .default([]),
 });
 
 export interface PairQuestion {
@@ -65,6 +69,11 @@ function present(
   rowAt: Uint32Array,
   { p, q }: Positions,
 ): PairDetail {
+  const inRows = (cycles: readonly BarCycle[]): BarCycle[] =>
+    cycles.map(({ bar, simplices }) => ({
+      bar,
+      simplices: simplices && simplices.map((nodes) => nodes.map((at) => rowAt[at] ?? 0)),
+    }));
   return {
     a: rowAt[p] ?? 0,
     b: rowAt[q] ?? 0,
@@ -78,6 +87,10 @@ function present(
       swapped: stored.swapped[dimension] ?? [],
       matching: stored.matchings[dimension] ?? [],
       realising: stored.realising[dimension] ?? -1,
+      cycles: {
+        recorded: inRows(stored.cycles[dimension]?.recorded ?? []),
+        swapped: inRows(stored.cycles[dimension]?.swapped ?? []),
+      },
     })),
   };
 }

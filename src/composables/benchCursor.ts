@@ -11,6 +11,8 @@ export function useBenchCursor(
   const pointers = new Set<(pair: Pair | null) => void>();
   const spoken = ref('');
   const cursor = shallowRef<Pair | null>(null);
+  /** Arrival positions of the cycle that is looked at. */
+  const traced = shallowRef<readonly number[]>([]);
   const events: PairEvents = {
     onPoint(pair, keyboard) {
       const same = pair?.p === cursor.value?.p && pair?.q === cursor.value?.q;
@@ -25,5 +27,5 @@ export function useBenchCursor(
       if (pair !== null) spoken.value = `Selected. ${describe(pair).join('. ')}`;
     },
   };
-  return { pointers, spoken, events };
+  return { pointers, spoken, events, traced };
 }

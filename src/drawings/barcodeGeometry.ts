@@ -1,4 +1,4 @@
-import type { PairDetail, WireBars } from '#contract/runs';
+import type { BarCycle, PairDetail, WireBars } from '#contract/runs';
 import type { Bar } from './barWords';
 
 /** One line of the barcode of a dimension. */
@@ -11,7 +11,12 @@ export interface BarRow {
   readonly cost: number;
   /** This match costs the whole bottleneck distance. */
   readonly realising: boolean;
+  /** One cycle of many for each bar, as node rows, where the engine gives one. */
+  readonly cycles?: { readonly recorded: BarSimplices; readonly swapped: BarSimplices };
 }
+
+/** Null where it is too long to show, or there is no such bar. */
+export type BarSimplices = BarCycle['simplices'];
 
 export interface BarBand {
   readonly dimension: number;
@@ -56,13 +61,18 @@ export function recordedBand(dimension: number, bars: WireBars): BarBand {
 
 /** Recorded and swapped barcode of one dimension, joined by the optimal matching of the engine. */
 export function swappedBand(detail: PairDetail['dimensions'][number]): BarBand {
+  const cycleOf = (side: 'recorded' | 'swapped', bar: number): BarSimplices =>
+    detail.cycles[side].find((cycle) => cycle.bar === bar)?.simplices ?? null;
   const rows = detail.matching.map(([r, s, cost], index): BarRow => {
     const from = detail.recorded[r];
     const to = detail.swapped[s];
     const recorded = from === undefined ? null : barOf(from);
     const swapped = to === undefined ? null : barOf(to);
     const same = recorded?.birth === swapped?.birth && recorded?.death === swapped?.death;
-    return { recorded, swapped, moved: !same, cost, realising: index === detail.realising };
+    const ends = { recorded, swapped, moved: !same, cost, realising: index === detail.realising };
+    if (same) return ends;
+    const cycles = { recorded: cycleOf('recorded', r), swapped: cycleOf('swapped', s) };
+    return { ...ends, cycles };
   });
   return { dimension: detail.dimension, rows: rows.sort(byBirth), distance: detail.distance };
 }

@@ -9,7 +9,7 @@ import {
 } from '../../src/drawings/barcodeGeometry';
 import { barWords, dimensionTitle } from '../../src/drawings/barWords';
 import { bettiAt, bettiCurve, largestGap, stairs } from '../../src/drawings/bettiGeometry';
-import { leewayWords, moveWords } from '../../src/components/bench/faceWords';
+import { leewayWords, movesOf } from '../../src/components/bench/faceWords';
 
 const steps = (value: number): string => `${value} ${value === 1 ? 'step' : 'steps'}`;
 
@@ -33,6 +33,10 @@ const detail: PairDetail['dimensions'][number] = {
     [2, 2, 0],
   ],
   realising: 0,
+  cycles: {
+    recorded: [{ bar: 0, simplices: [[3, 4]] }],
+    swapped: [{ bar: 0, simplices: null }],
+  },
 };
 
 describe('the words of a bar', () => {
@@ -80,7 +84,7 @@ describe('a barcode with a swap laid over', () => {
         [2, 1, 1],
       ],
     });
-    expect(moveWords([band], steps, String)).toEqual([
+    expect(movesOf([band], steps, String).map(({ words }) => words)).toEqual([
       'A loop is born at 14 instead of 21, 7 steps earlier, and still closes at 41.',
       'A loop that lived from 3 to 6 is gone.',
       'A loop is born at 45 instead of 44, 1 step later, and still never closes.',

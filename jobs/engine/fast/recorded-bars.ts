@@ -1,7 +1,7 @@
 import { mateOfColumn, Status, type Recorded } from './recorded';
 import { barKey } from './row';
 import type { Scale } from './scale';
-import type { Tables } from './tables';
+import type { Complex } from './tables';
 
 /** The recorded barcode of one dimension, by rank of f. */
 export interface RankedBars {
@@ -36,7 +36,7 @@ export interface RecordedBars {
   readonly laterByPivot: readonly LaterColumns[];
 }
 
-export function readRecordedBars(tables: Tables, recorded: Recorded, scale: Scale): RecordedBars {
+export function readRecordedBars(tables: Complex, recorded: Recorded, scale: Scale): RecordedBars {
   const { top, budget } = tables;
   const dimensions = Array.from({ length: top }, (_, k) => k);
   return {
@@ -51,8 +51,8 @@ export function readRecordedBars(tables: Tables, recorded: Recorded, scale: Scal
 }
 
 /** Calls `visit(birth position, death position, column)` for every negative column of dimension d. */
-function eachPair(
-  tables: Tables,
+export function eachPair(
+  tables: Complex,
   recorded: Recorded,
   d: number,
   visit: (birth: number, death: number, column: number) => void,
@@ -66,29 +66,29 @@ function eachPair(
   }
 }
 
-/** Calls `visit(position, mate)` for every class of dimension k that K gives birth to. */
-function eachClass(
-  tables: Tables,
+/** Calls `visit(position, mate, simplex)` for every class of dimension k that K gives birth to. */
+export function eachClass(
+  tables: Complex,
   recorded: Recorded,
   k: number,
-  visit: (birth: number, mate: number) => void,
+  visit: (birth: number, mate: number, simplex: number) => void,
 ): void {
   const mate = recorded.mate[k]!;
   if (k === 0) {
     const { childCount } = tables.levels[0]!;
-    for (let v = 0; v < tables.nodeCount; v++) if (childCount[v] === 0) visit(v, mate[v]!);
+    for (let v = 0; v < tables.nodeCount; v++) if (childCount[v] === 0) visit(v, mate[v]!, v);
     return;
   }
   const { count, simplex, position } = tables.columns[k]!;
   const { status } = recorded.reduced[k]!;
   for (let c = 0; c < count; c++) {
     if (status[c] === Status.Zero || status[c] === Status.Cleared) {
-      visit(position[c]!, mate[simplex[c]!]!);
+      visit(position[c]!, mate[simplex[c]!]!, simplex[c]!);
     }
   }
 }
 
-function rankedBars(tables: Tables, recorded: Recorded, scale: Scale, k: number): RankedBars {
+function rankedBars(tables: Complex, recorded: Recorded, scale: Scale, k: number): RankedBars {
   const { rank, value } = scale;
   const { budget } = tables;
   const found: number[] = [];
@@ -112,7 +112,7 @@ function rankedBars(tables: Tables, recorded: Recorded, scale: Scale, k: number)
 }
 
 function recordedEvents(
-  tables: Tables,
+  tables: Complex,
   recorded: Recorded,
   scale: Scale,
   k: number,
@@ -136,7 +136,7 @@ function recordedEvents(
   return { diedStart, diedBirth, born };
 }
 
-function laterColumns(tables: Tables, recorded: Recorded, d: number): LaterColumns {
+function laterColumns(tables: Complex, recorded: Recorded, d: number): LaterColumns {
   const { nodeCount, budget } = tables;
   const start = budget.int32(nodeCount + 1);
   let total = 0;

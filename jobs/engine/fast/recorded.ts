@@ -1,7 +1,7 @@
 import { RowSet } from './bitset';
 import { IntPool } from './pool';
 import type { Pulse } from './pulse';
-import type { Tables } from './tables';
+import type { Complex } from './tables';
 
 /** What the reduction of K found for a column. */
 export const Status = {
@@ -52,7 +52,7 @@ export function mateOfColumn(column: number): number {
  * to 1 with clearing (Chen, Kerber 2011). A row with a first child is an apparent pair (Bauer 2021):
  * the boundary of that child is already reduced and is added as it is.
  */
-export function reduceRecorded(tables: Tables, pulse: Pulse): Recorded {
+export function reduceRecorded(tables: Complex, pulse: Pulse): Recorded {
   const { levels, columns, top, budget, nodeCount } = tables;
   const words = (nodeCount + 31) >>> 5;
   const mate = levels.slice(0, top).map((level) => {
@@ -82,7 +82,7 @@ export function reduceRecorded(tables: Tables, pulse: Pulse): Recorded {
 
 /** Returns the work that a zero column took on average. */
 function reduceDimension(
-  tables: Tables,
+  tables: Complex,
   recorded: Recorded,
   d: number,
   rows: RowSet,
@@ -124,7 +124,7 @@ function reduceDimension(
 
 /** Adds until the pivot row is free; returns it, or -1 if the column became zero. */
 function reduceColumn(
-  tables: Tables,
+  tables: Complex,
   recorded: Recorded,
   d: number,
   column: number,
@@ -152,7 +152,7 @@ function reduceColumn(
   }
 }
 
-function touchSimplex(tables: Tables, recorded: Recorded, d: number, column: number, s: number) {
+function touchSimplex(tables: Complex, recorded: Recorded, d: number, column: number, s: number) {
   const { nodes } = tables.levels[d]!;
   const { touched } = recorded.reduced[d]!;
   const base = column * recorded.words;

@@ -20,20 +20,24 @@ export interface RowsByFirstChild {
   readonly rows: Int32Array;
 }
 
-/** Everything about the graph that no swap changes. Nodes are arrival positions. */
-export interface Tables {
+/** The cliques of a graph, listed, and the columns that its reduction needs. */
+export interface Complex {
   readonly nodeCount: number;
   /** D + 1, the dimension of the last columns. */
   readonly top: number;
   readonly budget: Budget;
   /** Dimensions 0..D+1. */
   readonly levels: readonly Level[];
+  /** Candidates for critical columns, dimensions 1..D+1 (index 0 unused). */
+  readonly columns: readonly Columns[];
+}
+
+/** Everything about the graph that no swap changes. Nodes are arrival positions. */
+export interface Tables extends Complex {
   /** Dimensions 0..D. */
   readonly stars: readonly Star[];
   /** Candidates for critical star columns, dimensions 1..D+1 (index 0 unused). */
   readonly starColumns: readonly StarCandidates[];
-  /** Candidates for critical columns, dimensions 1..D+1 (index 0 unused). */
-  readonly columns: readonly Columns[];
   /** Dimensions 0..D. */
   readonly byFirstChild: readonly RowsByFirstChild[];
   readonly neighbours: Adjacency;
@@ -52,21 +56,28 @@ export interface TableRequest {
   readonly memory: Memory;
 }
 
-export function buildTables(request: TableRequest, pulse: Pulse): Tables {
-  const { nodeCount, ends, maxDimension } = request;
+/** Lists the cliques and the columns; enough to reduce the graph in its own order. */
+export function listComplex(request: TableRequest, pulse: Pulse): Complex {
   const budget = new Budget(request.limits, request.memory);
-  const top = maxDimension + 1;
-  const neighbours = adjacency(nodeCount, ends, budget);
+  const top = request.maxDimension + 1;
   const { graph, counts } = chooseLabels(request, top, budget, pulse);
   const levels = listCliques(graph, counts.simplices, budget, pulse);
-  const { stars, starColumns } = buildStars(levels, nodeCount, neighbours, budget, pulse);
   const columns = levels.map((level, d) =>
     d === 0 ? collectColumnsOfNothing(budget) : collectColumns(levels, level.dimension, budget),
   );
+  return { nodeCount: request.nodeCount, top, budget, levels, columns };
+}
+
+export function buildTables(request: TableRequest, pulse: Pulse): Tables {
+  const { nodeCount, ends } = request;
+  const complex = listComplex(request, pulse);
+  const { top, budget, levels } = complex;
+  const neighbours = adjacency(nodeCount, ends, budget);
+  const { stars, starColumns } = buildStars(levels, nodeCount, neighbours, budget, pulse);
   const byFirstChild = levels
     .slice(0, top)
     .map((_, d) => rowsByFirstChild(levels, d, nodeCount, budget));
-  return { nodeCount, top, budget, levels, stars, starColumns, columns, byFirstChild, neighbours };
+  return { ...complex, stars, starColumns, byFirstChild, neighbours };
 }
 
 function chooseLabels(

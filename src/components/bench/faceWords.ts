@@ -1,4 +1,4 @@
-import type { BarBand } from '../../drawings/barcodeGeometry';
+import type { BarBand, BarRow } from '../../drawings/barcodeGeometry';
 import { dimensionNoun, type Amount, type Bar } from '../../drawings/barWords';
 import type { Leeway } from '../../graphs/leeway';
 
@@ -7,23 +7,31 @@ export function leewayWords({ earlier, later, open }: Leeway): string {
   return `${open ? 'at least ' : ''}${earlier} earlier · ${later} later`;
 }
 
+/** A bar that moves, in words. */
+export interface Move {
+  readonly words: string;
+  readonly dimension: number;
+  readonly row: BarRow;
+}
+
 /**
  * One sentence for each bar that moves, those that make the distance first, then by cost.
  * @param write writes a time of the filtration.
  */
-export function moveWords(
+export function movesOf(
   bands: readonly BarBand[],
   amount: Amount,
   write: (value: number) => string,
-): string[] {
+): Move[] {
   return bands
-    .flatMap((band) =>
-      band.rows.filter((row) => row.moved).map((row) => ({ ...row, dimension: band.dimension })),
+    .flatMap(({ dimension, rows }) =>
+      rows.filter((row) => row.moved).map((row) => ({ row, dimension })),
     )
-    .sort((a, b) => b.cost - a.cost)
-    .map((row) => {
-      const noun = `A ${dimensionNoun(row.dimension, 1)}`;
-      return sentence(noun, row.recorded, row.swapped, amount, write);
+    .sort((a, b) => b.row.cost - a.row.cost)
+    .map(({ row, dimension }) => {
+      const noun = `A ${dimensionNoun(dimension, 1)}`;
+      const words = sentence(noun, row.recorded, row.swapped, amount, write);
+      return { words, dimension, row };
     });
 }
 
