@@ -9,6 +9,14 @@ import { Workshop, until } from '../support/workshop';
 const LIMITS = { simplices: 1e8, bytes: 4 * 2 ** 30 };
 const NEVER = { shouldStop: () => false, onProgress: () => undefined };
 
+/** Simplices of so many positions each, as lists of node rows. */
+function inRows(simplices: Int32Array | null, width: number, order: Uint32Array) {
+  if (simplices === null) return null;
+  return Array.from({ length: simplices.length / width }, (_, i) =>
+    Array.from(simplices.subarray(i * width, (i + 1) * width), (p) => order[p]),
+  );
+}
+
 describe('a swap in full', () => {
   let workshop: Workshop;
   beforeAll(async () => {
@@ -40,6 +48,14 @@ describe('a swap in full', () => {
       expect(answer.dimensions.map(({ swapped }) => swapped.length)).toEqual(
         expected.swapped.map(({ births }) => births.length),
       );
+      answer.dimensions.forEach(({ cycles }, k) => {
+        expect(cycles.swapped).toEqual(
+          expected.cycles[k]!.swapped.map(({ bar, simplices }) => ({
+            bar,
+            simplices: inRows(simplices, k + 1, order),
+          })),
+        );
+      });
       expect(await read(a, b)).toEqual(answer);
     }
     await expect(read(4, 4)).rejects.toMatchObject({ code: 'pairs.not_found' });
