@@ -9,6 +9,7 @@ import type { RouteMap } from './http/route';
 import { importRoutes } from './imports/routes';
 import { memberRoutes } from './members/routes';
 import { modelRoutes } from './models/routes';
+import { exportRoutes } from './exports/routes';
 import { revisionRoutes } from './revisions/routes';
 import { workspaceRoutes } from './workspaces/routes';
 
@@ -43,6 +44,7 @@ export function makeRoutes(
     ...datasetRoutes(dependencies),
     ...datasetLifeRoutes(dependencies),
     ...revisionRoutes(dependencies),
+    ...exportRoutes(dependencies),
     ...importRoutes(dependencies),
     ...modelRoutes(dependencies),
     ...groupRoutes(dependencies),

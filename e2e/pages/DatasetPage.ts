@@ -7,6 +7,10 @@ export class DatasetPage {
     return this.page.getByRole('region', { name: 'Revisions' });
   }
 
+  get exports(): Locator {
+    return this.page.getByRole('region', { name: 'Export' });
+  }
+
   get startPart(): Locator {
     return this.page.getByRole('region', { name: 'Start a run' });
   }

@@ -195,6 +195,24 @@ export const ROUTES = {
     access: RECORDERS,
     summary: 'A new revision with corrected entries',
   },
+  exportRevision: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/export/:kind`,
+    access: EVERYONE,
+    summary: 'A revision as it was understood, as a file',
+  },
+  originals: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/originals`,
+    access: EVERYONE,
+    summary: 'The files that a revision came from',
+  },
+  original: {
+    method: 'get',
+    path: `${W}/revisions/:revisionId/originals/:position`,
+    access: EVERYONE,
+    summary: 'One of them as it was sent',
+  },
   runEstimate: {
     method: 'get',
     path: `${W}/revisions/:revisionId/estimate`,

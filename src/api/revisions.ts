@@ -1,3 +1,4 @@
+import { originalFiles, type OriginalFiles } from '#contract/exports';
 import { importWeights, type ImportWeights } from '#contract/imports';
 import {
   madeRevision,
@@ -42,3 +43,11 @@ export const makeCorrections = (
     method: 'POST',
     body,
   });
+
+export async function getOriginals(
+  workspaceId: string,
+  revisionId: string,
+): Promise<OriginalFiles['files']> {
+  const path = inWorkspace(workspaceId, 'revisions', revisionId, 'originals');
+  return (await requestJson(path, originalFiles)).files;
+}

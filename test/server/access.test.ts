@@ -11,6 +11,7 @@ import {
   importForm,
   makeGroup,
   makeImport,
+  makeOriginals,
   makeMember,
   makePerson,
   makeQueuedRun,
@@ -173,6 +174,18 @@ function samples(world: World): Record<RouteName, Sample> {
     revisionWeights: {
       status: 200,
       parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
+    exportRevision: {
+      status: 200,
+      parameters: () => Promise.resolve({ revisionId: world.revisionId, kind: 'graphml' }),
+    },
+    originals: {
+      status: 200,
+      parameters: () => Promise.resolve({ revisionId: world.revisionId }),
+    },
+    original: {
+      status: 200,
+      parameters: async () => ({ revisionId: await makeOriginals(db, scope), position: '1' }),
     },
     thresholdRevision: {
       status: 201,

@@ -5,6 +5,7 @@ export interface Answer {
   readonly status: number;
   readonly headers: Headers;
   readonly text: string;
+  readonly bytes: Uint8Array;
   /** The body by its schema. @throws Error if it does not fit */
   read<T>(schema: z.ZodType<T>): T;
   /** The body as a problem. @throws Error if it is none */
@@ -59,7 +60,7 @@ export class Client {
       redirect: 'manual',
     });
     for (const line of response.headers.getSetCookie()) this.#keep(line);
-    return answerOf(response, await response.text());
+    return answerOf(response, new Uint8Array(await response.arrayBuffer()));
   }
 
   #keep(setCookie: string): void {
@@ -71,12 +72,14 @@ export class Client {
   }
 }
 
-function answerOf(response: Response, text: string): Answer {
+function answerOf(response: Response, bytes: Uint8Array): Answer {
+  const text = new TextDecoder().decode(bytes);
   const json = (): unknown => JSON.parse(text);
   return {
     status: response.status,
     headers: response.headers,
     text,
+    bytes,
     read: (schema) => schema.parse(json()),
     get problem() {
       if (!response.headers.get('content-type')?.startsWith('application/problem+json')) {

@@ -16,7 +16,7 @@ import { createRun } from '../../db/repositories/runs';
 import type { Scope } from '../../db/repositories/scope';
 import { insertUser } from '../../db/repositories/users';
 import { insertOwnedWorkspace } from '../../db/repositories/workspaces';
-import { pairDetails, revisionEstimates, runBlocks, runs } from '../../db/schema/index';
+import { imports, pairDetails, revisionEstimates, runBlocks, runs } from '../../db/schema/index';
 import { createDataset } from '../../server/datasets/usecases';
 import type { ReadNetwork } from '../../server/datasets/readNetwork';
 import { readDraft } from '../../server/reading/draft';
@@ -180,6 +180,14 @@ export async function makeImport(db: Db, scope: Scope): Promise<string> {
   } finally {
     rmSync(folder, { recursive: true });
   }
+}
+
+/** A revision with the files that it came from. @returns its id */
+export async function makeOriginals(db: Db, scope: Scope): Promise<string> {
+  const importId = await makeImport(db, scope);
+  const { revisionId } = await makeDataset(db, scope, 'Came from files');
+  await db.update(imports).set({ revisionId, state: 'saved' }).where(eq(imports.id, importId));
+  return revisionId;
 }
 
 export function makeGroup(db: Db, scope: Scope, runId: string): Promise<string> {
