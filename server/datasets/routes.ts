@@ -6,6 +6,7 @@ import { decodeUint32 } from '../../db/codecs/typedArrays';
 import { findRevision, listNodes } from '../../db/repositories/revisions';
 import type { Dependencies } from '../dependencies';
 import { notFound, parseBody } from '../http/parse';
+import { sourcesOf } from '../imports/receive';
 import { created, ok, route, SENT, type RouteMap } from '../http/route';
 import { networkFrom } from './readNetwork';
 import { presentDataset, presentRevision } from './presenter';
@@ -34,7 +35,8 @@ export function datasetRoutes({ database: { db }, reader, uploads }: Dependencie
         const files = bothFiles(received);
         const fields = parseBody(createDatasetFields, received.fields);
         const network = networkFrom(await reader.read(files));
-        const id = await createDataset(db, member, fields, network);
+        const sources = await sourcesOf(received);
+        const id = await createDataset(db, member, fields, network, sources);
         return created(presentDataset(await datasetOf(db, member, id)));
       }),
     ),
@@ -47,7 +49,8 @@ export function datasetRoutes({ database: { db }, reader, uploads }: Dependencie
           const files = bothFiles(received);
           parseBody(noFields, received.fields);
           const network = networkFrom(await reader.read(files));
-          await createRevision(db, member, params.datasetId, network);
+          const sources = await sourcesOf(received);
+          await createRevision(db, member, params.datasetId, network, sources);
           return created(presentDataset(await datasetOf(db, member, params.datasetId)));
         });
       },

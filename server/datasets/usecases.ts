@@ -17,6 +17,8 @@ import {
 } from '../../db/repositories/revisions';
 import type { Scope } from '../../db/repositories/scope';
 import { notFound } from '../http/parse';
+import { keepOriginals } from '../imports/originals';
+import type { ReceivedSource } from '../imports/receive';
 import { sameContent } from './errors';
 import type { ReadNetwork } from './readNetwork';
 
@@ -32,17 +34,22 @@ export interface SavedRevision {
   readonly number: number;
 }
 
-/** Saves a network as a new dataset with revision 1: all of it or nothing. @returns its id */
+/**
+ * Saves a network as a new dataset with revision 1: all of it or nothing. @returns its id
+ * @param sources the files it was read from, kept beside it
+ */
 export async function createDataset(
   db: Db,
   scope: Scope,
   fields: CreateDatasetFields & { readonly invented?: boolean },
   network: ReadNetwork,
+  sources: readonly ReceivedSource[] = [],
 ): Promise<string> {
-  const made = await db.transaction((transaction) =>
-    addDataset(transaction, scope, fields, network),
-  );
-  return made.datasetId;
+  return db.transaction(async (transaction) => {
+    const made = await addDataset(transaction, scope, fields, network);
+    await keepOriginals(transaction, scope, made, sources);
+    return made.datasetId;
+  });
 }
 
 /** The same within a transaction that does more. */
@@ -62,8 +69,12 @@ export async function createRevision(
   scope: Scope,
   datasetId: string,
   network: ReadNetwork,
+  sources: readonly ReceivedSource[],
 ): Promise<void> {
-  await db.transaction((transaction) => addRevision(transaction, scope, datasetId, network));
+  await db.transaction(async (transaction) => {
+    const made = await addRevision(transaction, scope, datasetId, network);
+    await keepOriginals(transaction, scope, made, sources);
+  });
 }
 
 /** The same within a transaction that does more. */

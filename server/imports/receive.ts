@@ -34,7 +34,7 @@ export interface ReceivedSource extends NewImportFile {
 /** What is to be read, in the order sent, pasted text last; each has a name of its own. */
 export async function sourcesOf(
   { folder, files }: Received,
-  pasted: string | undefined,
+  pasted?: string,
 ): Promise<ReceivedSource[]> {
   const text = pasted === undefined ? null : Buffer.from(pasted);
   const count = files.length + (text === null ? 0 : 1);

@@ -4,6 +4,7 @@ import { datasets } from '../../db/schema/index';
 import { dataset } from '../../server/contract/datasets';
 import { EXPORT_KINDS, originalFiles } from '../../server/contract/exports';
 import { NASTY_LABELS } from '../formats/writers/networks';
+import { EDGES_CSV } from '../support/factories';
 import { Importing } from '../support/importing';
 
 let by: Importing;
@@ -92,11 +93,12 @@ describe('the files that came in', () => {
     expect((await by.client.get(pathOf(saved.revisionId, 'originals/2'))).status).toBe(404);
   });
 
-  test('are none where the revision came by the plain upload', async () => {
+  test('are kept for the plain upload of two tables, too', async () => {
     const made = (await by.up.send({})).read(dataset);
     const id = made.revisions[0]?.id ?? '';
-    const listed = (await by.client.get(pathOf(id, 'originals'))).read(originalFiles);
-    expect(listed.files).toEqual([]);
+    const { files } = (await by.client.get(pathOf(id, 'originals'))).read(originalFiles);
+    expect(files.map(({ name }) => name)).toEqual(['nodes.csv', 'edges.csv']);
+    expect((await by.client.get(pathOf(id, 'originals/1'))).text).toBe(EDGES_CSV);
   });
 });
 
