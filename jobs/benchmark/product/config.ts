@@ -33,7 +33,7 @@ export function readProductConfig(dist: string): ProductConfig {
       PUBLIC_URL: origin,
       HEDDLE_DEMO: '0',
       HEDDLE_SPA_DIR: join(dist, 'spa'),
-      HEDDLE_PARSE_THREAD: join(dist, 'parseThread.js'),
+      HEDDLE_READING_SCRIPT: join(dist, 'reading.js'),
       LOG_LEVEL: 'error',
       ...more,
     }),
