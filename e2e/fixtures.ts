@@ -3,6 +3,7 @@ import { House } from './house';
 import { BandPart } from './pages/BandPart';
 import { BenchPage } from './pages/BenchPage';
 import { DatasetPage } from './pages/DatasetPage';
+import { GrowPage } from './pages/GrowPage';
 import { ImportPage } from './pages/ImportPage';
 import { SignInPage } from './pages/SignInPage';
 import { SignUpPage } from './pages/SignUpPage';
@@ -18,6 +19,7 @@ interface Fixtures {
   datasetPage: DatasetPage;
   benchPage: BenchPage;
   importPage: ImportPage;
+  growPage: GrowPage;
   /** Another browser-less session, for preparing what the test does not show. */
   house: House;
   /** One more session, of somebody else. */
@@ -48,6 +50,7 @@ export const test = base.extend<Fixtures>({
   datasetPage: async ({ page }, use) => use(new DatasetPage(page)),
   benchPage: async ({ page }, use) => use(new BenchPage(page)),
   importPage: async ({ page }, use) => use(new ImportPage(page)),
+  growPage: async ({ page }, use) => use(new GrowPage(page)),
   house: async ({ playwright, baseURL }, use) => withHouse(playwright, baseURL, use),
   otherHouse: async ({ playwright, baseURL }, use) => withHouse(playwright, baseURL, use),
   quietPage: [

@@ -87,6 +87,18 @@ export async function listDeletedDatasets(db: Queryable, scope: Scope): Promise<
   return rows.flatMap(({ deletedAt, ...row }) => (deletedAt ? [{ ...row, deletedAt }] : []));
 }
 
+/** The names in use in the workspace, also of archived and of deleted datasets. */
+export async function listNamesWithDeleted(
+  db: Queryable,
+  scope: Scope,
+): Promise<ReadonlySet<string>> {
+  const rows = await db
+    .select({ name: datasets.name })
+    .from(datasets)
+    .where(eq(datasets.workspaceId, scope.workspaceId));
+  return new Set(rows.map(({ name }) => name));
+}
+
 /** The name of a dataset, deleted or not, as it must be typed to purge it; null if missing. */
 export async function findNameToPurge(
   db: Queryable,

@@ -40,4 +40,33 @@ export class DatasetPage {
     await this.start.click();
     await this.page.waitForURL('**/runs/*');
   }
+
+  get changes(): Locator {
+    return this.page.getByRole('region', { name: 'What changed' });
+  }
+
+  get away(): Locator {
+    return this.page.getByRole('region', { name: 'Put away or remove' });
+  }
+
+  /** Opens what a revision has otherwise than the one before it. */
+  async compare(number: number): Promise<void> {
+    await this.changes.getByText(`Revision ${number} against revision ${number - 1}`).click();
+  }
+
+  /** A table of differences, by its caption. */
+  difference(caption: string): Locator {
+    return this.changes.getByRole('table', { name: caption });
+  }
+
+  /** Opens a way to make a revision from another, and gives its form. */
+  async making(title: string): Promise<Locator> {
+    const part = this.page.getByRole('group').filter({ hasText: title }).last();
+    await part.getByText(title).click();
+    return part;
+  }
+
+  act(label: string): Locator {
+    return this.away.getByRole('button', { name: label });
+  }
 }

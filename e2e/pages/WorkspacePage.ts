@@ -34,4 +34,18 @@ export class WorkspacePage {
   dataset(name: string): Locator {
     return this.page.getByRole('link', { name, exact: true });
   }
+
+  get showArchived(): Locator {
+    return this.page.getByRole('checkbox', { name: 'Show archived' });
+  }
+
+  /** Datasets that were deleted and can be restored. */
+  get deleted(): Locator {
+    return this.page.getByRole('region', { name: 'Deleted' });
+  }
+
+  /** The line of a dataset in the list. */
+  line(name: string): Locator {
+    return this.page.getByRole('listitem').filter({ has: this.dataset(name) });
+  }
 }

@@ -3,9 +3,10 @@ import { EDGE_WORDS, named, NODE_WORDS, wordOf } from '../sources/columnWords';
 import type { RawSource, RawTable } from '../sources/types';
 import { IssueList } from '../issues';
 import type { EdgeColumns, ImportChoices, NodeColumns, OrderKind, Question } from './choices';
+import { timeColumnOf, openQuestions, type TimedColumn } from './openQuestions';
 import { dayQuestion } from './ordering';
 import { hasValues } from './recordedTimes';
-import { pickTables, type PickedTable } from './tables';
+import { cellsOf, pickTables, type PickedTable } from './tables';
 import { TimeScale } from './timeScale';
 
 /** Rows that the guesses about times look at. */
@@ -26,7 +27,7 @@ export function guessChoices(sources: readonly RawSource[]): {
   const recorded = nodes !== null && hasValues(nodes);
   const commas = !recorded && sources.some(({ reading }) => reading.decimal === ',');
   const decimal = commas ? ',' : '.';
-  const timed = recorded ? null : timeColumnOf(kind, nodes, edges, columns);
+  const timed = recorded ? null : timeColumnOf({ nodes, edges }, { order: { kind }, columns });
   const scale = timed ? scaleOf(timed, decimal) : null;
   const choices: ImportChoices = {
     columns,
@@ -39,10 +40,8 @@ export function guessChoices(sources: readonly RawSource[]): {
     weights: { kind: 'all' },
   };
   const questions = [
-    ...(kind === 'rows' ? orderQuestion(nodes, edges) : []),
     ...(timed && scale ? dayQuestion(timed.file, timed.column, scale.ambiguous) : []),
-    ...(timed ? yearQuestion(timed) : []),
-    ...(timed && kind === 'column' ? missingQuestion(timed) : []),
+    ...openQuestions(sources, choices),
   ];
   return { choices, questions };
 }
@@ -98,11 +97,6 @@ function entryFits(table: RawTable, left: ReadonlySet<string>, word: string): bo
 
 const worded = (left: ReadonlySet<string>, part: string): string | null =>
   [...left].find((name) => wordOf(name).split('_').includes(part)) ?? null;
-
-const cellsOf = ({ columns, preview }: RawTable, column: string): string[] => {
-  const at = columns.indexOf(column);
-  return preview.map(({ cells }) => cells[at] ?? '');
-};
 
 /** The first column whose cells are all there and all different. */
 function distinctColumn(table: RawTable, left: ReadonlySet<string>): string | null {
@@ -177,27 +171,6 @@ function guessOrder({ nodes, edges }: ImportChoices['columns']): OrderKind {
   return edges.time !== null ? 'first_edge' : 'rows';
 }
 
-/** A column of times, and those that are read with it. */
-interface TimedColumn extends PickedTable {
-  readonly column: string;
-  readonly others: readonly (string | null)[];
-}
-
-function timeColumnOf(
-  kind: OrderKind,
-  nodes: PickedTable | null,
-  edges: PickedTable | null,
-  columns: ImportChoices['columns'],
-): TimedColumn | null {
-  const { entry, earliest, latest } = columns.nodes;
-  if (kind === 'column' && nodes && entry !== null)
-    return { ...nodes, column: entry, others: [earliest, latest] };
-  const { time } = columns.edges;
-  if (kind === 'first_edge' && edges && time !== null)
-    return { ...edges, column: time, others: [] };
-  return null;
-}
-
 function scaleOf({ file, table, column, others }: TimedColumn, decimal: '.' | ',') {
   const scale = new TimeScale(file, { decimal, dayOrder: null, years: 'numbers' });
   const places = [column, ...others].flatMap((name) =>
@@ -210,52 +183,4 @@ function scaleOf({ file, table, column, others }: TimedColumn, decimal: '.' | ',
   }
   const ambiguous = scale.settle(new IssueList());
   return { dayOrder: scale.dayOrder, ambiguous };
-}
-
-function orderQuestion(nodes: PickedTable | null, edges: PickedTable | null): Question[] {
-  const file = (nodes ?? edges)?.file;
-  if (file === undefined) return [];
-  return [
-    {
-      kind: 'order',
-      file,
-      column: null,
-      text: 'No column was found that says when the nodes arrived. Is it the order of the rows, or does one of the columns say it?',
-      examples: [],
-      blocking: false,
-    },
-  ];
-}
-
-function yearQuestion({ file, table, column }: TimedColumn): Question[] {
-  const known = cellsOf(table, column).filter((cell) => !isMissing(cell));
-  const years = known.filter((cell) => /^(?:1[4-9]|20)\d{2}$/.test(cell));
-  if (years.length === 0 || years.length < known.length) return [];
-  return [
-    {
-      kind: 'years',
-      file,
-      column,
-      text: `Are values like ${years[0]} years? As dates each is an interval from its first day to its last; as numbers they are points.`,
-      examples: years.slice(0, 5),
-      blocking: false,
-    },
-  ];
-}
-
-function missingQuestion({ file, table, column }: TimedColumn): Question[] {
-  const at = table.columns.indexOf(column);
-  let missing = 0;
-  for (const { cells } of table.rows()) if (isMissing(cells[at] ?? '')) missing++;
-  if (missing === 0) return [];
-  return [
-    {
-      kind: 'missing',
-      file,
-      column,
-      text: `${missing} ${missing === 1 ? 'node has' : 'nodes have'} no entry. Are they left out, or placed last, or is the import refused?`,
-      examples: [],
-      blocking: false,
-    },
-  ];
 }

@@ -69,3 +69,9 @@ export function indicesOf<Name extends string>(
   }
   return indices;
 }
+
+/** The cells of a column in the first rows; empty texts where there is no such column. */
+export const cellsOf = ({ columns, preview }: RawTable, column: string): string[] => {
+  const at = columns.indexOf(column);
+  return preview.map(({ cells }) => cells[at] ?? '');
+};

@@ -2,6 +2,7 @@ import { Readable } from 'node:stream';
 import { UPLOAD_LIMITS } from '#contract/datasets';
 import { WHOLE } from '#contract/enums';
 import type { Db } from '../../db/client';
+import { listNamesWithDeleted } from '../../db/repositories/datasetLife';
 import { insertMember, listMemberships } from '../../db/repositories/memberships';
 import type { Scope } from '../../db/repositories/scope';
 import { withSeedLock } from '../../db/repositories/seeding';
@@ -66,7 +67,8 @@ async function firstOwner(
 }
 
 async function makeNetworks(db: Db, scope: Scope): Promise<void> {
-  const there = new Set((await datasetsOf(db, scope, 'shown')).map(({ dataset }) => dataset.name));
+  // A deleted one is there too: somebody took it away, and may restore it.
+  const there = await listNamesWithDeleted(db, scope);
   for (const network of demoNetworks()) {
     if (there.has(network.name)) continue;
     const { name, description, invented } = network;

@@ -4,8 +4,8 @@ import { IMPORT_LIMITS, LISTED_PROBLEMS } from '#contract/imports';
 import { contentHash } from '../../formats/canonical';
 import { readSource } from '../../formats/sources/readSource';
 import type { RawSource, SourceLimits } from '../../formats/sources/types';
-import type { ImportChoices, Question } from '../../formats/understanding/choices';
 import { guessChoices } from '../../formats/understanding/guessChoices';
+import { openQuestions } from '../../formats/understanding/openQuestions';
 import { understand, type Understanding } from '../../formats/understanding/understand';
 import { writeArray } from './arrayFiles';
 import { draftView, type DraftView } from './draftView';
@@ -67,8 +67,7 @@ function viewOf(
     return shownFile(file, position, source);
   };
   const taken = choices ?? guess.choices;
-  // What blocks comes from the understanding; what only may matter, from the guess.
-  const asked = [...questions, ...guess.questions.filter((one) => stillOpen(one, taken))];
+  const asked = [...questions, ...openQuestions(sources, taken)];
   return draftView.parse({
     files: files.map(shown),
     choices: taken,
@@ -82,16 +81,6 @@ function viewOf(
     growth: network && growthOf(network),
     signature: signatureOf(sources),
   });
-}
-
-/** Whether a question of the guess concerns what is chosen now. */
-function stillOpen({ kind, column, blocking }: Question, choices: ImportChoices): boolean {
-  if (blocking) return false;
-  const { columns, order, missing } = choices;
-  if (kind === 'order') return order.kind === 'rows';
-  if (kind === 'missing' && missing !== 'refuse') return false;
-  const timed = { column: columns.nodes.entry, first_edge: columns.edges.time, rows: null };
-  return column === timed[order.kind];
 }
 
 /** Names the columns of both tables, whatever their order. */

@@ -66,9 +66,11 @@ export function correctedNodes(
     if (node === undefined) {
       say('row', `The revision has no row ${correction.row}; its last is ${nodes.length - 1}.`);
     } else if (seen.has(correction.row)) {
-      say('row', `The node ${quoted(node.label)} is corrected twice; correct it once.`);
+      say('row', `The node ${quoted(node.id)} is corrected twice; correct it once.`);
     } else {
-      corrected[correction.row] = correctedNode(node, correction, rules, say) ?? node;
+      const sayOfNode: Say = (field, message) =>
+        say(field, `Node ${quoted(node.id)}, ${field}: ${message}`);
+      corrected[correction.row] = correctedNode(node, correction, rules, sayOfNode) ?? node;
     }
     seen.add(correction.row);
   }

@@ -45,6 +45,13 @@ export const moveDataset = (
 export const deleteDataset = (workspaceId: string, datasetId: string): Promise<void> =>
   requestNothing(inWorkspace(workspaceId, 'datasets', datasetId), { method: 'DELETE' });
 
+/** Removes a dataset at once. @param name as it must be typed: the server compares it */
+export const purgeDataset = (workspaceId: string, datasetId: string, name: string): Promise<void> =>
+  requestNothing(inWorkspace(workspaceId, 'datasets', datasetId, 'purge'), {
+    method: 'POST',
+    body: { name },
+  });
+
 export const getRevision = (workspaceId: string, revisionId: string): Promise<Revision> =>
   requestJson(inWorkspace(workspaceId, 'revisions', revisionId), revision);
 

@@ -31,6 +31,7 @@ export const useDatasetsStore = defineStore('datasets', () => {
   }
 
   const remove = api.deleteDataset;
+  const purge = api.purgeDataset;
 
   async function load(workspaceId: string, datasetId: string): Promise<void> {
     if (current.value?.id !== datasetId) current.value = null;
@@ -70,6 +71,6 @@ export const useDatasetsStore = defineStore('datasets', () => {
 
   return {
     ...{ list, current, deleted, sent },
-    ...{ loadList, loadDeleted, load, create, createRevision, abort, move, remove },
+    ...{ loadList, loadDeleted, load, create, createRevision, abort, move, remove, purge },
   };
 });

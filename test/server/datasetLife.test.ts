@@ -164,6 +164,38 @@ describe('the unfinished runs of a dataset that is deleted', () => {
     expect(await rowsOf()).toEqual(after);
   });
 
+  test('keep what was stored of them, and take no block that was computed before the deletion', async () => {
+    const { db } = app;
+    const other = await makeDataset(db, workspace.scope, 'Other');
+    const fenceOf = async (revisionId: string) => {
+      const fence = { runId: await makeQueuedRun(db, workspace.scope, revisionId), attempt: 1 };
+      expect(await claimRun(db, fence)).not.toBeNull();
+      const planned = { rows: new Uint8Array(8), partners: null, pairs: 1, cost: 1 };
+      const blocks = [planned, planned, planned];
+      const plan = { engineVersion: '1', estimate: {}, barcode: new Uint8Array(), blocks };
+      expect(await storePlan(db, fence, plan, mail)).toBe(true);
+      return fence;
+    };
+    const store = (fence: { runId: string; attempt: number }, block: number) => {
+      const result = Uint8Array.of(7, block);
+      return storeBlock(db, fence, { block, result, storedBy: 'w', seconds: 1 }, mail);
+    };
+    const filled = async ({ runId }: { runId: string }) =>
+      (await db.select().from(runBlocks).where(eq(runBlocks.runId, runId)))
+        .filter(({ result }) => result !== null)
+        .map(({ block }) => block)
+        .sort();
+    const [going, staying] = [await fenceOf(made.revisionId), await fenceOf(other.revisionId)];
+    expect([await store(going, 0), await store(staying, 0)]).toEqual(['stored', 'stored']);
+    await remove();
+    expect([await store(going, 1), await store(staying, 1)]).toEqual(['stale', 'stored']);
+    expect([await filled(going), await filled(staying)]).toEqual([[0], [0, 1]]);
+    // Nor does restoring let the late one in.
+    expect((await act('restore')).status).toBe(200);
+    expect(await store(going, 2)).toBe('stale');
+    expect(await filled(going)).toEqual([0]);
+  });
+
   test('those of another dataset go on', async () => {
     const other = await makeDataset(app.db, workspace.scope, 'Other');
     const run = await makeQueuedRun(app.db, workspace.scope, other.revisionId);

@@ -123,6 +123,24 @@ describe('a draft', () => {
     expect(back.ready).toBe(false);
   });
 
+  test('asks of the entry column that is chosen, whichever was guessed', async () => {
+    const table = 'id,entry,seen\na,1,1999\nb,2,\nc,3,2004\n';
+    const draft = await by.begin({ 'n.csv': table });
+    expect([draft.choices.columns.nodes.entry, draft.questions]).toEqual(['entry', []]);
+    const { columns } = draft.choices;
+    const nodes = { ...columns.nodes, entry: 'seen' };
+    const choices = { ...draft.choices, columns: { ...columns, nodes } };
+    const asked = await by.change(draft.id, { choices });
+    expect(asked.questions).toMatchObject([
+      { kind: 'years', column: 'seen', examples: ['1999', '2004'] },
+      { kind: 'missing', column: 'seen' },
+    ]);
+    expect(asked.questions[1]?.text).toMatch(/^1 node has no entry/);
+    const told = await by.change(draft.id, { choices: { ...choices, missing: 'last' } });
+    expect(told.questions.map(({ kind }) => kind)).toEqual(['years']);
+    expect((await by.change(draft.id, { choices: null })).questions).toEqual([]);
+  });
+
   test('with another name is the same version', async () => {
     const draft = await by.begin(FILES);
     const renamed = await by.change(draft.id, { name: 'Renamed' });

@@ -1,5 +1,6 @@
 import { afterEach, beforeEach, expect, it } from 'vitest';
 import { eq } from 'drizzle-orm';
+import { deleteDataset } from '../../db/repositories/datasetLife';
 import { findUserByEmail } from '../../db/repositories/users';
 import { listMemberships } from '../../db/repositories/memberships';
 import { datasets, memberships, outbox, runs, users } from '../../db/schema/index';
@@ -102,6 +103,25 @@ it('is taken up where an interrupted call left it', async () => {
   expect([people.length, roles.length, started.length, queued.length]).toEqual([12, 12, 1, 1]);
   expect(sets.map(({ name }) => name)).toEqual(whole.sets.map(({ name }) => name));
   expect(sets.slice(0, 2)).toEqual(whole.sets.slice(0, 2));
+});
+
+it('makes no dataset again that was deleted, also not where a call was interrupted', async () => {
+  const { db } = workshop;
+  await seedDemo(db, passwords);
+  const scope = await ownersScope();
+  const { people, sets } = await contents();
+  const gone = sets.filter(({ name }) => /Saltmere|Tern Bank/.test(name)).map(({ id }) => id);
+  expect(gone).toHaveLength(2);
+  for (const id of gone) expect(await deleteDataset(db, scope, id)).toBe(true);
+  const deleted = (await contents()).sets;
+  expect(await seedDemo(db, passwords)).toBe('present');
+  // What a call leaves that dies before it makes the other people.
+  for (const { id } of people)
+    if (id !== scope.userId) await db.delete(users).where(eq(users.id, id));
+  expect(await seedDemo(db, passwords)).toBe('made');
+  const after = await contents();
+  expect(after.sets).toEqual(deleted);
+  expect(after.started).toHaveLength(1);
 });
 
 it('makes nothing where somebody already has an account', async () => {

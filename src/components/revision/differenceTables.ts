@@ -14,6 +14,9 @@ type Window = DifferenceBody['windowsChanged'][number]['before'];
 const windowWords = ({ earliest, latest }: Window): string =>
   earliest === null && latest === null ? 'none' : `${earliest ?? 'open'} to ${latest ?? 'open'}`;
 
+/** Of an edge, which has no direction. */
+const ENDS = ['Id of one end', 'Id of the other'];
+
 /** The kinds of difference that there are, nodes first. */
 export function differenceTables(found: DifferenceBody): DifferenceTable[] {
   const { counts } = found;
@@ -44,8 +47,8 @@ export function differenceTables(found: DifferenceBody): DifferenceTable[] {
         windowWords(after),
       ]),
     ],
-    ['Edges added', counts.edgesAdded, ['Node', 'Node'], found.edgesAdded.map(edge)],
-    ['Edges removed', counts.edgesRemoved, ['Node', 'Node'], found.edgesRemoved.map(edge)],
+    ['Edges added', counts.edgesAdded, ENDS, found.edgesAdded.map(edge)],
+    ['Edges removed', counts.edgesRemoved, ENDS, found.edgesRemoved.map(edge)],
   ];
   return all
     .filter(([, count]) => count > 0)
