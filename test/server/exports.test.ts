@@ -58,6 +58,16 @@ describe('a revision as it was understood', () => {
     expect(answer.headers.get('x-content-type-options')).toBe('nosniff');
   });
 
+  test('has a name that ends with what it is, however long the name of the dataset', async () => {
+    const name = '👩🏽‍🔬'.repeat(20) + 'é'.repeat(40);
+    const saved = await by.saved(await by.begin(DATES), { name });
+    const answer = await by.client.get(pathOf(saved.revisionId, 'export/edges_csv'));
+    expect(answer.status).toBe(200);
+    const header = answer.headers.get('content-disposition') ?? '';
+    const named = decodeURIComponent(/filename\*=UTF-8''([^;]+)/.exec(header)?.[1] ?? '');
+    expect(named).toMatch(/^👩.*… ?é+ revision 1 edges\.csv$/u);
+  });
+
   test('is refused by name of the text where the format cannot hold it', async () => {
     const json = JSON.stringify({
       nodes: [
@@ -90,6 +100,8 @@ describe('the files that came in', () => {
     const answer = await by.client.get(pathOf(saved.revisionId, 'originals/0'));
     expect(new Uint8Array(answer.bytes)).toEqual(bytes);
     expect(answer.headers.get('content-disposition')).toMatch(/^attachment; filename=/);
+    expect(answer.headers.get('content-type')).toBe('application/octet-stream');
+    expect(answer.headers.get('x-content-type-options')).toBe('nosniff');
     expect((await by.client.get(pathOf(saved.revisionId, 'originals/2'))).status).toBe(404);
   });
 
