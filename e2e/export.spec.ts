@@ -43,3 +43,30 @@ test('a revision is taken out by keyboard and comes back with the same content h
   const [sent] = payloads([{ name: 'back.graphml', text }]);
   expect(readFileSync(await (await original).path())).toEqual(sent?.buffer);
 });
+
+test('a format that cannot hold a text of the network says so beside it', async ({
+  page,
+  house,
+  signInPage,
+  importPage,
+  datasetPage,
+}) => {
+  const account = newAccount('Uma Unwritable');
+  await house.signUp(account);
+  const { id } = await house.workspace('Odd labels');
+  await signInPage.open(`/workspaces/${id}/imports/new`);
+  await signInPage.signIn(account);
+  const nodes = [
+    { id: 'a', label: 'odd \uffff', entry: 1 },
+    { id: 'b', label: 'plain', entry: 2 },
+  ];
+  const text = JSON.stringify({ nodes, links: [{ source: 'a', target: 'b' }] });
+  await importPage.choose([{ name: 'odd.json', text }]);
+  await importPage.step('Save').click();
+  await importPage.name.fill('Odd');
+  await importPage.save.click();
+  await page.waitForURL('**/datasets/*');
+  await datasetPage.exports.getByRole('link', { name: 'GraphML' }).click();
+  await expect(datasetPage.exports.getByText(/XML cannot hold\. Take JSON or CSV/)).toBeVisible();
+  await expect(datasetPage.title('Odd')).toBeVisible();
+});

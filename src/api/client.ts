@@ -123,6 +123,12 @@ export async function requestBytes(path: string, signal?: AbortSignal): Promise<
   return response.arrayBuffer();
 }
 
+/** Asks whether a file can be taken and leaves its bytes. @throws ApiProblem with the reason why not */
+export async function requestLeave(path: string): Promise<void> {
+  const response = await send(path, {});
+  await response.body?.cancel();
+}
+
 /** A path under a workspace, every part escaped. */
 export function inWorkspace(workspaceId: string, ...parts: (string | number)[]): string {
   return ['/api/workspaces', workspaceId, ...parts]
