@@ -17,6 +17,7 @@ import {
   networkxGraphs,
   pairLists,
   ripserBars,
+  swapped,
   type PairList,
 } from './programs';
 
@@ -53,15 +54,6 @@ const SAMPLES = MODELS.flatMap((model) =>
     Array.from({ length: SIZES }, (_, n) => sampleOf(model, entries, n)),
   ),
 );
-
-/** The network with the values of two arrival positions exchanged. */
-function swapped(network: Network, [p, q]: readonly [number, number]): Network {
-  const rows = Array.from({ length: network.nodeCount }, (_, row) => row);
-  rows.sort((u, v) => network.values[u]! - network.values[v]! || u - v);
-  const values = network.values.slice();
-  [values[rows[p]!], values[rows[q]!]] = [values[rows[q]!]!, values[rows[p]!]!];
-  return { ...network, values };
-}
 
 const prepared = (network: Network) => prepare(network, TOP, AMPLE, QUIET);
 

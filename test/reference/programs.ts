@@ -113,3 +113,12 @@ export function pairLists(barcode: Barcode): PairList[] {
     Array.from(births, (birth, k) => [birth, deaths[k]!] as const),
   );
 }
+
+/** The network with the values of two arrival positions exchanged. */
+export function swapped(network: Network, [p, q]: readonly [number, number]): Network {
+  const rows = Array.from({ length: network.nodeCount }, (_, row) => row);
+  rows.sort((u, v) => network.values[u]! - network.values[v]! || u - v);
+  const values = network.values.slice();
+  [values[rows[p]!], values[rows[q]!]] = [values[rows[q]!]!, values[rows[p]!]!];
+  return { ...network, values };
+}
