@@ -24,7 +24,8 @@ export function detectFormat(head: string, name: string): GraphFormat | null {
 }
 
 /** Lines like `Creator "…"` may stand before the graph. */
-const GML = /^(?:(?:creator|version|comment|directed)\b[^\n\r]*\s+){0,20}graph\s*\[/i;
+const GML =
+  /^(?:(?:creator|version|comment|directed)[ \t]+(?:"[^"]*"\s+|[\d.]+\s+|(?![\s\d"])[^\n\r"]*[\n\r]\s*)){0,20}graph\s*\[/i;
 
 /** By the first element that is known, whatever stands before it. */
 function xmlFormat(text: string): GraphFormat | null {

@@ -11,6 +11,12 @@ test.each([
   ['[{"id": 1}]', 'pasted text', 'node_link'],
   ['[id],[label]\n1,2\n', 'table.csv', null],
   ['Creator "x"\nVersion 1\ngraph\n[\n', 'pasted text', 'gml'],
+  ['Version 1 Creator "x" directed 0 graph [', 'pasted text', 'gml'],
+  ['comment one of "two"\n', 'pasted text', null],
+  // Told at once, however often a word that may stand before a graph comes back.
+  ['version="1.0"?xml '.repeat(3_000), 'x.gexf', 'gexf'],
+  ['version 1 '.repeat(3_000), 'pasted text', null],
+  ['comment a b\n'.repeat(3_000), 'pasted text', null],
   ['# a comment\ngraph [ directed 1', 'pasted text', 'gml'],
   ['graph,entry\na,1\n', 'table.csv', null],
   ['% comment\n*Vertices 3\n', 'pasted text', 'pajek'],
